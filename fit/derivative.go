@@ -1,0 +1,329 @@
+package fit
+
+import (
+	"math"
+)
+
+// Derivative is the name of the estimator of this file.
+const Derivative = "derivative"
+
+// derivative finds the inflections of a potentiometric curve: the interior
+// maxima of dy/dV, which are the zeros of its second derivative. They are
+// found on the inverse smoothing spline, where the condition reads
+// d2V/du2 = 0 and is a straight line on each piece.
+//
+// Where single increments hold a good part of the rise, the readings decide
+// themselves: the steepest increment, and in it the zero of the second
+// derivative by divided differences. There
+//
+//	u = h/sqrt(12)
+//
+// for an increment h, since nothing but the increment is known of a leap
+// (measured: the error of every interpolant has an sd of 0.25 to 0.29 h); the
+// 95 % half-width is 0.475 h where it holds most of the rise, else 1.96 u.
+// Where the rise spreads over many increments, the spline decides and
+//
+//	u^2 = u_noise^2 + moves^2 + (share * h)^2/3
+//
+// with the noise carried through the spline, the movement when blocks of
+// readings are left out, and the share of the rise that the bracket holds.
+type derivative struct {
+	k    *cleaned
+	inv  *inverse
+	l    Limits
+	cand []candidate
+}
+
+func newDerivative(k *cleaned, l Limits) (*derivative, error) {
+	inv, err := newInverse(k)
+	if err != nil {
+		return nil, err
+	}
+	return &derivative{k: k, inv: inv, l: l, cand: inv.candidates(l)}, nil
+}
+
+// estimates returns the accepted endpoints in rising volume.
+func (d *derivative) estimates() []Estimate {
+	var out []Estimate
+	var kept []candidate
+	for _, c := range d.cand {
+		if !d.stands(c) {
+			continue
+		}
+		e := d.estimate(c)
+		if d.unfit(e) {
+			continue
+		}
+		if n := len(out); n > 0 && !d.apart(out[n-1], e) {
+			if c.contrast > kept[n-1].contrast {
+				out[n-1], kept[n-1] = e, c
+			}
+			continue
+		}
+		out, kept = append(out, e), append(kept, c)
+	}
+	for i := range out {
+		d.finish(&out[i], kept[i])
+	}
+	return out
+}
+
+// stands tells whether a candidate rises enough to be a jump: between its
+// half-height points and from the flatter place, or the end of data, on
+// either side.
+func (d *derivative) stands(c candidate) bool {
+	return c.hi-c.lo >= d.l.RiseDecades && c.u-c.before >= d.l.SideDecades && c.behind-c.u >= d.l.SideDecades
+}
+
+// Shares of the rise between the half-height points that one increment holds,
+// and how well its slope must be known where it holds a part only.
+const (
+	mostOfTheRise  = 0.5
+	partOfTheRise  = 0.25
+	slopeKnownTo   = 0.1
+	leastSlopeRise = 1e-9 // decades; no division by an increment without rise
+)
+
+// readingsDecide tells whether increment i is seen to be the steepest by
+// itself: it holds most of the rise, or a part of it and noise and burette
+// leave its slope certain to a tenth.
+func (d *derivative) readingsDecide(i int, c candidate) bool {
+	k, share := d.k, d.share(i, c)
+	rise, h := math.Max(k.u[i+1]-k.u[i], leastSlopeRise), k.v[i+1]-k.v[i]
+	unsure := math.Sqrt2 * math.Hypot(k.noise/rise, k.uv/h)
+	return share >= mostOfTheRise || share >= partOfTheRise && unsure < slopeKnownTo
+}
+
+// estimate places a candidate in its bracket.
+func (d *derivative) estimate(c candidate) Estimate {
+	i := d.steepest(c)
+	if !d.readingsDecide(i, c) {
+		return d.estimateGentle(c)
+	}
+	k := d.k
+	h := k.v[i+1] - k.v[i]
+	v := k.secondDerivativeZero(i)
+	return Estimate{
+		Estimator: Derivative, Kind: Inflection, V: v, U: h / math.Sqrt(12), Contrast: c.contrast,
+		Reading: k.reading(k.u[i] + (v-k.v[i])/h*(k.u[i+1]-k.u[i])),
+		Bracket: [2]int{k.at[i], k.at[i+1]}, Rise: k.u[i+1] - k.u[i], Leap: d.share(i, c) >= mostOfTheRise,
+	}
+}
+
+// estimateGentle places a candidate whose rise spreads over many increments.
+func (d *derivative) estimateGentle(c candidate) Estimate {
+	g, ok := d.inv.place(c)
+	if !ok {
+		g = gentle{u: c.u, v: c.v, noise: d.inv.uncertainty(c)}
+	}
+	k := d.k
+	i := k.bracketOf(g.v)
+	return Estimate{
+		Estimator: Derivative, Kind: Inflection, V: g.v, Contrast: c.contrast, Reading: k.reading(g.u),
+		U:       math.Hypot(g.noise, math.Max(d.share(i, c), 0)*(k.v[i+1]-k.v[i])/math.Sqrt(3)),
+		Bracket: [2]int{k.at[i], k.at[i+1]}, Rise: k.u[i+1] - k.u[i],
+	}
+}
+
+func (d *derivative) share(i int, c candidate) float64 {
+	return (d.k.u[i+1] - d.k.u[i]) / (c.hi - c.lo)
+}
+
+// steepest returns the steepest of the increments that reach between the
+// half-height points.
+func (d *derivative) steepest(c candidate) int {
+	k, best, most := d.k, d.k.bracketOf(c.v), math.Inf(-1)
+	for i := 0; i+1 < len(k.u); i++ {
+		if k.u[i+1] < c.lo || k.u[i] > c.hi {
+			continue
+		}
+		if slope := (k.u[i+1] - k.u[i]) / (k.v[i+1] - k.v[i]); slope > most {
+			best, most = i, slope
+		}
+	}
+	return best
+}
+
+// secondDerivativeZero returns where the second derivative by divided
+// differences passes zero inside the steepest increment i: first differences
+// stand at the mid-points of the increments, second differences at the
+// reading between two, and the zero is interpolated between the readings at
+// either end (common practice, no source: the way of pharmacopoeias and
+// standards). At an end of the data, or if the second differences do not
+// change sign, it is the middle.
+func (k *cleaned) secondDerivativeZero(i int) float64 {
+	v, u := k.v, k.u
+	middle := (v[i] + v[i+1]) / 2
+	if i < 1 || i+2 >= len(v) {
+		return middle
+	}
+	secant := func(j int) float64 { return (u[j+1] - u[j]) / (v[j+1] - v[j]) }
+	a := (secant(i) - secant(i-1)) / ((v[i+1] - v[i-1]) / 2)
+	b := (secant(i+1) - secant(i)) / ((v[i+2] - v[i]) / 2)
+	if !(a > 0 && b < 0) {
+		return middle
+	}
+	return v[i] + (v[i+1]-v[i])*a/(a-b)
+}
+
+// unfit tells whether an estimate lies at an end of the data, too near the
+// last reading, or is too wide to be called an endpoint. A wide bracket is no
+// reason: it has a flag of its own.
+func (d *derivative) unfit(e Estimate) bool {
+	k := d.k
+	n := len(k.v)
+	if e.Bracket[0] == k.at[0] || e.V <= 0 || k.v[n-1] < e.V*(1+d.l.PastPercent/100) {
+		return true
+	}
+	return !e.Leap && student95*e.U > d.l.HalfWidthMost/100*e.V
+}
+
+// apart tells whether two neighbouring endpoints are two: at least three
+// increments lie between their brackets and two of these in a row are flatter
+// than both brackets by the contrast. Hand-typed volumes and electrode lag
+// split one jump in two; the readings themselves must show the gap.
+func (d *derivative) apart(a, b Estimate) bool {
+	k := d.k
+	ia, ib := k.bracketOf(a.V), k.bracketOf(b.V)
+	if ib-ia < 4 {
+		return false
+	}
+	secant := func(i, j int) float64 { return (k.u[j] - k.u[i]) / (k.v[j] - k.v[i]) }
+	steep := math.Min(secant(ia, ia+1), secant(ib, ib+1))
+	flat := math.Inf(1)
+	for i := ia + 1; i+2 <= ib; i++ {
+		flat = math.Min(flat, secant(i, i+2))
+	}
+	return flat*d.l.Contrast <= steep
+}
+
+// finish adds what leaving out blocks of readings does and the interval. An
+// endpoint that single readings decide does not hang on its flanks.
+func (d *derivative) finish(e *Estimate, c candidate) {
+	if !d.readingsDecide(d.steepest(c), c) {
+		e.Moves = d.moves(c)
+		e.U = math.Hypot(e.U, e.Moves)
+	}
+	half := student95 * e.U
+	if e.Leap {
+		half = uniform95 * (d.k.volumeAt(e.Bracket[1]) - d.k.volumeAt(e.Bracket[0]))
+	}
+	e.Low, e.High = e.V-half, e.V+half
+}
+
+// volumeAt returns the volume of the reading with index at in the Curve.
+func (k *cleaned) volumeAt(at int) float64 {
+	for i, a := range k.at {
+		if a == at {
+			return k.v[i]
+		}
+	}
+	return math.NaN()
+}
+
+// The jackknife leaves out eight groups in turn, or more where a group would
+// be longer than three readings: a wider gap beside a jump moves it by what
+// the gap hides, not by what the readings say.
+const (
+	blocks         = 8
+	longestInBlock = 3
+)
+
+// moves is the delete-a-block jackknife [jack] of a candidate's place: blocks
+// of neighbouring readings on its flanks are left out in turn,
+// the spline is fitted again with the same smoothing, and
+//
+//	moves^2 = (g-1)/g * sum (v_b - v)^2
+//
+// Each deviation is capped at the width of the jump: uncapped it explodes on
+// measured data. The readings of the jump itself stay, since without them
+// there is no jump to place.
+func (d *derivative) moves(c candidate) float64 {
+	flank := d.flank(c)
+	g := min(max(blocks, len(flank)/longestInBlock), len(flank))
+	if g < 2 {
+		return 0
+	}
+	vlo, _, _ := d.inv.curve.At(c.lo)
+	vhi, _, _ := d.inv.curve.At(c.hi)
+	width := math.Abs(vhi - vlo)
+	var again inverse
+	sum := 0.0
+	for b := range g {
+		from, to := b*len(flank)/g, (b+1)*len(flank)/g
+		dev := again.shiftWithout(d.inv, flank[from:to], c)
+		dev = math.Min(math.Abs(dev), width)
+		sum += dev * dev
+	}
+	return math.Sqrt(float64(g-1) / float64(g) * sum)
+}
+
+// flank lists the merged points within the candidate's reach, between the
+// flatter places beside it, that are not between its half-height points or
+// next to them.
+func (d *derivative) flank(c candidate) []int {
+	u := d.inv.u
+	var out []int
+	for i := range u {
+		if u[i] < c.before || u[i] > c.behind {
+			continue
+		}
+		inside := i > 0 && u[i-1] <= c.hi && i+1 < len(u) && u[i+1] >= c.lo
+		if !inside {
+			out = append(out, i)
+		}
+	}
+	return out
+}
+
+// shiftWithout fits s to the points of full but those listed in drop, in
+// rising order, and returns how far the candidate's place moved, mL; infinite
+// if no place is left.
+func (s *inverse) shiftWithout(full *inverse, drop []int, c candidate) float64 {
+	s.u, s.v, s.w = s.u[:0], s.v[:0], s.w[:0]
+	for i := range full.u {
+		if len(drop) > 0 && drop[0] == i {
+			drop = drop[1:]
+			continue
+		}
+		s.u, s.v, s.w = append(s.u, full.u[i]), append(s.v, full.v[i]), append(s.w, full.w[i])
+	}
+	if s.smoother.Load(s.u, s.v, s.w) != nil {
+		return math.Inf(1)
+	}
+	s.smoother.Fit(full.lambda)
+	curve := s.smoother.Cubic()
+	best, far := math.Inf(1), math.Inf(1)
+	for _, t := range curve.Turns() {
+		if t.Least && math.Abs(t.X-c.u) < far {
+			far = math.Abs(t.X - c.u)
+			best, _, _ = curve.At(t.X)
+		}
+	}
+	return best - c.v
+}
+
+// endsInJump tells whether the curve is still getting steeper where the
+// readings end: the last stretch stands out from the flatter place before it
+// like a jump, but nothing flat follows.
+func (d *derivative) endsInJump() bool {
+	ext := prominent(d.inv.extremes(), d.l)
+	n := len(ext)
+	if n < 2 {
+		return false
+	}
+	first, last := d.inv.curve.Knots()
+	if ext[n-1].peak && ext[n-1].height > d.l.Contrast*ext[n-2].height {
+		return last-ext[n-2].u >= d.l.RiseDecades && ext[n-2].u > first
+	}
+	for _, c := range d.cand { // a peak with too little behind it
+		if c.hi-c.lo >= d.l.RiseDecades && c.u-c.before >= d.l.SideDecades {
+			e := d.estimate(c)
+			tooNear := c.behind-c.u < d.l.SideDecades || d.k.v[len(d.k.v)-1] < e.V*(1+d.l.PastPercent/100)
+			if tooNear && e.Bracket[0] != d.k.at[0] {
+				return true
+			}
+		}
+	}
+	return false
+}

@@ -1,0 +1,208 @@
+package fit
+
+import (
+	"math"
+	"sort"
+)
+
+// Weight says how much a flag speaks against an endpoint.
+type Weight int
+
+// The weights, lightest first.
+const (
+	Note Weight = iota + 1
+	Doubtful
+	Disputed
+)
+
+// Flag is a named reason for doubt with the figure and the limit that it
+// compares; words are made from them elsewhere.
+type Flag struct {
+	Name     string
+	Weight   Weight
+	Endpoint int // 1-based; 0 for the run
+	Figure   float64
+	Limit    float64
+	Unit     string
+	At       []int // readings concerned, indices in the Curve
+	About    any   // what a sentence needs beside: Compared, Overshoot, LeftOut ...
+}
+
+// Compared is an indicated endpoint beside the nearest refit of like kind.
+type Compared struct {
+	Indicated Indicated
+	Endpoint  int      // 1-based number of the answer it belongs to
+	Refit     Estimate // of the indicated one's kind
+	Limit     float64  // mL
+	Disagrees bool
+}
+
+// Overshoot is what the overshoot rule saw.
+type Overshoot struct{ Dose, Median, Times, Rise, Percent float64 }
+
+// judge sets the flags of an evaluation from its endpoints.
+func judge(c *Curve, k *cleaned, r *Result, l Limits, endsInJump bool) {
+	r.compare(c, l)
+	for i := range r.Endpoints {
+		e := &r.Endpoints[i]
+		n := i + 1
+		limit := l.Agreement(e.V)
+		k.overshoot(r, e, n, l)
+		if e.Kind == Break {
+			r.wideInterval(e, n, limit)
+		} else {
+			k.wideBracket(r, e, n, l)
+		}
+		if e.Moves > limit/3 {
+			r.poorFit(e, n, limit)
+		}
+	}
+	if c.Signal == Conductivity && c.V0 <= 0 {
+		r.flag(Flag{Name: "dilution-unknown", Weight: Doubtful, Unit: "mL"})
+	}
+	if len(r.Endpoints) == 0 {
+		r.missing(c, k, endsInJump, l)
+	}
+}
+
+// poorFit flags an endpoint that hangs on a few readings.
+func (r *Result) poorFit(e *Endpoint, n int, limit float64) {
+	f := Flag{Name: "poor-fit", Weight: Doubtful, Endpoint: n, Figure: e.Moves, Limit: limit / 3, Unit: "mL"}
+	if e.Moves > limit {
+		f.Weight, f.Limit = Disputed, limit
+	}
+	r.flag(f)
+}
+
+func heavier(disputed bool) Weight {
+	if disputed {
+		return Disputed
+	}
+	return Doubtful
+}
+
+func (r *Result) flag(f Flag) { r.Flags = append(r.Flags, f) }
+
+// missing says why there is no endpoint.
+func (r *Result) missing(c *Curve, k *cleaned, endsInJump bool, l Limits) {
+	n := len(k.v)
+	name := "no-endpoint"
+	if endsInJump && c.EndReading == nil {
+		name = "stops-short"
+	}
+	f := Flag{Name: name, Weight: heavier(c.Expected), Figure: k.v[n-1], Unit: "mL", At: []int{k.at[n-1]}}
+	if len(c.Indicated) > 0 {
+		f.About = c.Indicated[0]
+	}
+	if name == "no-endpoint" {
+		f.Figure, f.Limit, f.Unit = 0, 1, "endpoints"
+	}
+	r.flag(f)
+}
+
+// compare sets beside each indicated endpoint the nearest refit of like kind
+// and flags those that disagree. An inflection disagrees if it lies outside
+// the bracket that holds the refit's, one display step allowed, and further
+// from it than the limit; other kinds if they differ by more than the limit
+// and 3 u of the difference, u^2 + step^2/12.
+func (r *Result) compare(c *Curve, l Limits) {
+	for _, ind := range c.Indicated {
+		p, ok := r.like(ind)
+		if !ok {
+			continue
+		}
+		d := math.Abs(p.Refit.V - ind.V)
+		p.Limit = l.Agreement(p.Refit.V)
+		if ind.Kind == Inflection {
+			low, high := c.V[p.Refit.Bracket[0]]-ind.StepV, c.V[p.Refit.Bracket[1]]+ind.StepV
+			p.Disagrees = (ind.V < low || ind.V > high) && d > p.Limit
+		} else {
+			p.Limit = math.Max(p.Limit, 3*math.Sqrt(sq(p.Refit.U)+sq(ind.StepV)/12))
+			p.Disagrees = d > p.Limit
+		}
+		r.Compared = append(r.Compared, p)
+		if p.Disagrees {
+			r.flag(Flag{Name: "disagrees", Weight: Disputed, Endpoint: p.Endpoint, Figure: d, Limit: p.Limit, Unit: "mL", About: p})
+		}
+	}
+}
+
+// like finds the estimate of the indicated endpoint's kind that lies nearest.
+func (r *Result) like(ind Indicated) (p Compared, ok bool) {
+	for i, e := range r.Endpoints {
+		for _, est := range e.Estimates {
+			if est.Kind != ind.Kind || ok && math.Abs(est.V-ind.V) >= math.Abs(p.Refit.V-ind.V) {
+				continue
+			}
+			p, ok = Compared{Indicated: ind, Endpoint: i + 1, Refit: est}, true
+		}
+	}
+	return p, ok
+}
+
+// overshoot flags a dose across the fitted endpoint that is large against its
+// neighbours and against the endpoint.
+func (k *cleaned) overshoot(r *Result, e *Endpoint, n int, l Limits) {
+	if e.Kind == Break || e.Rise <= l.OvershootDecades {
+		return
+	}
+	o, ok := k.dose(e)
+	o.Rise = e.Rise
+	if !ok || o.Times < l.OvershootTimes || o.Percent < l.OvershootPercent {
+		return
+	}
+	weight := Doubtful
+	for _, p := range r.Compared {
+		if p.Endpoint == n && math.Abs(p.Refit.V-p.Indicated.V) > p.Limit {
+			weight = Disputed
+		}
+	}
+	r.flag(Flag{Name: "overshoot", Weight: weight, Endpoint: n, Figure: o.Percent, Limit: l.OvershootPercent, Unit: "%", At: e.Bracket[:], About: o})
+}
+
+// dose compares the increment across an endpoint with the median of its six
+// neighbours, three on either side where there are as many.
+func (k *cleaned) dose(e *Endpoint) (o Overshoot, ok bool) {
+	i := k.bracketOf(e.V)
+	var near []float64
+	for j := i - 3; j <= i+3; j++ {
+		if j != i && j >= 0 && j+1 < len(k.v) {
+			near = append(near, k.v[j+1]-k.v[j])
+		}
+	}
+	if len(near) == 0 {
+		return o, false
+	}
+	o.Dose, o.Median = k.v[i+1]-k.v[i], median(near)
+	o.Times, o.Percent = o.Dose/o.Median, 100*o.Dose/e.V
+	return o, true
+}
+
+// wideBracket flags answers that know nothing but their bracket.
+func (k *cleaned) wideBracket(r *Result, e *Endpoint, n int, l Limits) {
+	h := k.volumeAt(e.Bracket[1]) - k.volumeAt(e.Bracket[0])
+	percent := 100 * h / e.V
+	if percent <= l.WideBracketDoubtfulPercent || h <= l.AgreementFloorML {
+		return
+	}
+	f := Flag{Name: "wide-bracket", Weight: Doubtful, Endpoint: n, Figure: percent, Limit: l.WideBracketDoubtfulPercent, Unit: "%", At: e.Bracket[:], About: h}
+	if percent > l.WideBracketDisputedPercent {
+		f.Weight, f.Limit = Disputed, l.WideBracketDisputedPercent
+	}
+	r.flag(f)
+}
+
+// wideInterval flags a break whose 95 % half-width exceeds the limit.
+func (r *Result) wideInterval(e *Endpoint, n int, limit float64) {
+	half := math.Max(e.High-e.V, e.V-e.Low)
+	if half > limit {
+		r.flag(Flag{Name: "wide-interval", Weight: heavier(half > 2*limit), Endpoint: n, Figure: half, Limit: limit, Unit: "mL"})
+	}
+}
+
+func sortFlags(f []Flag) {
+	sort.SliceStable(f, func(i, j int) bool { return f[i].Weight > f[j].Weight })
+}
+
+func abs(x float64) float64  { return math.Abs(x) }
+func sqrt(x float64) float64 { return math.Sqrt(x) }
