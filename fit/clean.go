@@ -26,13 +26,14 @@ type LeftOut struct {
 // cleaned is a curve made fit for estimators: rising volumes, readings
 // oriented so that they rise across a jump and counted in decades.
 type cleaned struct {
-	at      []int     // index in the Curve
-	v, u    []float64 // mL, decades (conductivity: mS/cm)
-	sign    float64   // of the reading: y = sign * decade * u
-	decade  float64
-	noise   float64 // sd of u
-	uv      float64 // burette u, mL
-	leftOut []LeftOut
+	at       []int     // index in the Curve
+	v, u     []float64 // mL, decades (conductivity: mS/cm)
+	sign     float64   // of the reading: y = sign * decade * u
+	decade   float64
+	noise    float64 // sd of u; conductivity: relative to the reading
+	relative bool    // noise is relative
+	uv       float64 // burette u, mL
+	leftOut  []LeftOut
 }
 
 // order keeps the order of time: volumes that go back are left out, and of
@@ -100,6 +101,14 @@ func median(a []float64) float64 {
 		return b[n/2]
 	}
 	return (b[n/2-1] + b[n/2]) / 2
+}
+
+// sd is the standard deviation of reading i, in the unit of u.
+func (k *cleaned) sd(i int) float64 {
+	if k.relative {
+		return k.noise * math.Abs(k.u[i])
+	}
+	return k.noise
 }
 
 // without drops the entries of k that drop says.

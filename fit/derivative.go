@@ -312,9 +312,8 @@ func (d *derivative) endsInJump() bool {
 	if n < 2 {
 		return false
 	}
-	first, last := d.inv.curve.Knots()
-	if ext[n-1].peak && ext[n-1].height > d.l.Contrast*ext[n-2].height {
-		return last-ext[n-2].u >= d.l.RiseDecades && ext[n-2].u > first
+	if ext[n-1].peak && ext[n-1].height > d.l.Contrast*ext[n-2].height && ext[n-1].u-ext[n-2].u >= d.l.RiseDecades {
+		return true
 	}
 	for _, c := range d.cand { // a peak with too little behind it
 		if c.hi-c.lo >= d.l.RiseDecades && c.u-c.before >= d.l.SideDecades {

@@ -160,10 +160,8 @@ func nearest(es []Estimate, v float64) (best Estimate, ok bool) {
 // conductometric evaluates a conductivity curve.
 func conductometric(c *Curve, k *cleaned, name string, l Limits) *Result {
 	y := corrected(k.v, k.u, c.V0)
-	noise := newConduct(k.v, y, c.StepY)
-	level := median(k.u)
 	raw := *k
-	k.noise = noise.relSD * level
+	k.noise, k.relative = newConduct(k.v, y, c.StepY).relSD, true
 	k.strays(c.StepY, l)
 	k.stuckReadings(c.StepY, l)
 	y = corrected(k.v, k.u, c.V0)

@@ -16,7 +16,7 @@ import "math"
 func (k *cleaned) strays(stepU float64, l Limits) {
 	most := len(k.v) / 10
 	for range most {
-		i, distance, allowed := k.worstStray(strayBound(len(k.v), l.StrayFalseRate), math.Hypot(k.noise, stepU/math.Sqrt(12)))
+		i, distance, allowed := k.worstStray(strayBound(len(k.v), l.StrayFalseRate), stepU/math.Sqrt(12))
 		if i < 0 {
 			return
 		}
@@ -26,15 +26,15 @@ func (k *cleaned) strays(stepU float64, l Limits) {
 }
 
 // worstStray returns the index of the reading furthest beyond its bound, or
-// -1. sd is that of a reading: the noise and the rounding of the display once
-// more, since a coarse display hides noise of its own size from the estimate.
-func (k *cleaned) worstStray(bound, sd float64) (at int, distance, allowed float64) {
+// -1. The rounding of the display counts beside the noise: a coarse display
+// hides noise of its own size from the estimate.
+func (k *cleaned) worstStray(bound, rounding float64) (at int, distance, allowed float64) {
 	at = -1
 	worst := 1.0
 	for i := 2; i+2 < len(k.v); i++ {
 		d := offNeighbours(k.v[i-2:i+3], k.u[i-2:i+3])
 		chord := (k.u[i+1] - k.u[i-1]) / (k.v[i+1] - k.v[i-1])
-		limit := bound * math.Hypot(sd, k.uv*chord) * math.Sqrt(1.5)
+		limit := bound * math.Hypot(math.Hypot(k.sd(i), rounding), k.uv*chord) * math.Sqrt(1.5)
 		if r := math.Abs(d) / limit; r > worst {
 			at, worst, distance, allowed = i, r, math.Abs(d), limit
 		}
@@ -68,7 +68,7 @@ func (k *cleaned) stuckReadings(stepU float64, l Limits) {
 		}
 		if j-i >= 2 {
 			moved := k.movedWhileEqual(i, j)
-			if limit := math.Max(l.StuckSteps*stepU, l.StuckNoise*k.noise); moved > limit {
+			if limit := math.Max(l.StuckSteps*stepU, l.StuckNoise*k.sd(i)); moved > limit {
 				for m := i + 1; m <= j; m++ {
 					drop[m] = true
 					k.leftOut = append(k.leftOut, LeftOut{At: k.at[m], Why: LeftStuck, Figure: moved * k.decade, Limit: limit * k.decade})
