@@ -1,0 +1,81 @@
+package schemas
+
+// FactName names a fact of a run; the names are those of the record.
+type FactName string
+
+// The facts. The last two are not kept in the record: they let ingest check
+// the dump and join the lines of a footer to their runs.
+const (
+	FactSample      FactName = "sample"
+	FactProcedure   FactName = "procedure"
+	FactInstrument  FactName = "instrument"
+	FactOperator    FactName = "operator"
+	FactPurpose     FactName = "purpose"
+	FactStarted     FactName = "started"
+	FactTitrant     FactName = "titrant"
+	FactTitrantMol  FactName = "titrant_mol_per_l"
+	FactAliquot     FactName = "aliquot_ml"
+	FactSolvent     FactName = "solvent_ml"
+	FactReaction    FactName = "reaction"
+	FactTemperature FactName = "temperature_c"
+	FactEndReading  FactName = "end_reading"
+	FactReadings    FactName = "readings" // how many rows the run has
+	FactRun         FactName = "run"      // which run a footer row is about
+)
+
+// form is how the value of a fact is written.
+type form int
+
+const (
+	formText form = iota + 1
+	formDate
+	formNumber  // with a unit
+	formReading // with the unit of the readings, or one of their quantities
+	formCount
+)
+
+// factForms has every fact that a schema may map.
+var factForms = [...]struct {
+	name     FactName
+	form     form
+	quantity Quantity
+	allowed  []string // the only texts allowed; nil for free text
+}{
+	{FactSample, formText, "", nil},
+	{FactProcedure, formText, "", nil},
+	{FactInstrument, formText, "", nil},
+	{FactOperator, formText, "", nil},
+	{FactPurpose, formText, "", []string{"sample", "blank", "standard", "control", "check", "rinse"}},
+	{FactStarted, formDate, "", nil},
+	{FactTitrant, formText, "", nil},
+	{FactTitrantMol, formNumber, Concentration, nil},
+	{FactAliquot, formNumber, Volume, nil},
+	{FactSolvent, formNumber, Volume, nil},
+	{FactReaction, formText, "", []string{"acid-base", "precipitation", "redox", "non-aqueous"}},
+	{FactTemperature, formNumber, Temperature, nil},
+	{FactEndReading, formReading, "", nil},
+	{FactReadings, formCount, "", nil},
+	{FactRun, formText, "", nil},
+}
+
+// AllowedTexts returns the only texts that a fact may have, nil when any
+// text is allowed.
+func AllowedTexts(name FactName) []string {
+	for i := range factForms {
+		if factForms[i].name == name {
+			return factForms[i].allowed
+		}
+	}
+	return nil
+}
+
+// fieldQuantity is the quantity of each role that has one; its order is that
+// of the documentation. RoleNumber, RoleRun and RoleUnused have none.
+var fieldQuantity = [...]struct {
+	role     Role
+	quantity Quantity
+}{
+	{RoleVolume, Volume}, {RolePH, PH}, {RolePotential, Potential}, {RoleConductivity, Conductivity},
+	{RoleTime, Duration}, {RoleTemperature, Temperature},
+	{RoleNumber, ""}, {RoleRun, ""}, {RoleUnused, ""},
+}
