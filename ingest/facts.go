@@ -1,0 +1,201 @@
+package ingest
+
+import (
+	"bytes"
+	"fmt"
+	"slices"
+
+	"lastdrop/ingest/cells"
+	"lastdrop/schemas"
+)
+
+// applyFacts makes facts and indicated endpoints of the statements. A number
+// that enters arithmetic and cannot be read refuses the run; any other fact
+// that cannot be read is left out with a repair line.
+func (d *draft) applyFacts() {
+	for i := range d.schema.Facts {
+		rule := &d.schema.Facts[i]
+		s := d.find(string(rule.Name), rule.Titles)
+		switch {
+		case s != nil:
+			d.applyFact(rule, s)
+		case rule.Default != "":
+			*d.textSlot(rule.Name) = rule.Default
+		case rule.Name == schemas.FactReadings && d.fault == nil: // else it may be lost with the rest
+			d.refuse(d.lastLine, 0, -1, "readings", "the dump does not state how many rows the run has", fmt.Sprintf("schema %s expects it; the line is lost: export the dump again", d.schema.Name))
+		}
+	}
+	d.applyIndicated()
+	d.otherFacts()
+}
+
+// find returns the one statement with a key among the titles, nil for none.
+// A fact that is stated twice with different values refuses the run, for
+// nobody can tell which one holds.
+func (d *draft) find(field string, titles []string) *statement {
+	var found *statement
+	for i := range d.statements {
+		s := &d.statements[i]
+		if !equalFold(s.key, titles) {
+			continue
+		}
+		s.used = true
+		switch {
+		case d.missing(s.value):
+		case found == nil:
+			found = s
+		case bytes.Equal(found.value, s.value):
+			d.repairs.add(s.line, fmt.Sprintf("%s stated again", field))
+		default:
+			d.refuse(s.line, s.start, s.at, field, fmt.Sprintf("%s here, %s in line %d", cells.Quoted(s.value), cells.Quoted(found.value), found.line), "a fact may be stated once; export the dump again")
+		}
+	}
+	return found
+}
+
+func (d *draft) applyFact(rule *schemas.Fact, s *statement) {
+	switch rule.Name {
+	case schemas.FactStarted:
+		date, err := cells.ParseDate(string(s.value), rule.Format, rule.Zone)
+		if err != nil {
+			d.repairs.add(s.line, fmt.Sprintf("started: %s %v; the fact is not used", cells.Quoted(s.value), err))
+		}
+		d.run.Facts.Started = date
+	case schemas.FactReadings:
+		d.checkCount(s)
+	case schemas.FactRun: // has joined the footer row to its run
+	case schemas.FactTemperature:
+		if _, v, why, _ := d.quantity(s.value, rule.Unit, limitOf(string(rule.Name))); why != "" {
+			d.repairs.add(s.line, fmt.Sprintf("%s: %s; the fact is not used", rule.Name, why))
+		} else {
+			d.run.Facts.TemperatureC = &v
+		}
+	case schemas.FactTitrantMol, schemas.FactAliquot, schemas.FactSolvent, schemas.FactEndReading:
+		d.applyNumber(rule, s)
+	default:
+		*d.textSlot(rule.Name) = d.factText(rule, s)
+	}
+}
+
+// applyNumber reads a number that enters arithmetic.
+func (d *draft) applyNumber(rule *schemas.Fact, s *statement) {
+	unit, l := rule.Unit, limitOf(string(rule.Name))
+	if rule.Name == schemas.FactEndReading {
+		readings := d.columns.fields
+		if d.columns.reading < 0 {
+			return // the header has been refused
+		}
+		own := readings[d.columns.reading].Unit
+		if unit.Code == "" {
+			unit = own
+		}
+		if unit.Quantity != own.Quantity {
+			d.refuse(s.line, s.start, s.at, string(rule.Name), fmt.Sprintf("a %s in a run whose readings are %s", unit.Quantity, own.Quantity), "export it again, or state in the schema what the fact is")
+			return
+		}
+		l = limitOf(string(own.Quantity))
+	}
+	_, v, why, hint := d.quantity(s.value, unit, l)
+	if why != "" {
+		d.refuse(s.line, s.start, s.at, string(rule.Name), why, hint)
+		return
+	}
+	*d.numberSlot(rule.Name) = &v
+}
+
+// textSlot is where a text fact is kept.
+func (d *draft) textSlot(name schemas.FactName) *string {
+	f := &d.run.Facts
+	switch name {
+	case schemas.FactSample:
+		return &f.Sample
+	case schemas.FactProcedure:
+		return &f.Procedure
+	case schemas.FactInstrument:
+		return &f.Instrument
+	case schemas.FactOperator:
+		return &f.Operator
+	case schemas.FactPurpose:
+		return &f.Purpose
+	case schemas.FactTitrant:
+		return &f.Titrant
+	}
+	return &f.Reaction
+}
+
+// numberSlot is where a number that enters arithmetic is kept.
+func (d *draft) numberSlot(name schemas.FactName) **float64 {
+	f := &d.run.Facts
+	switch name {
+	case schemas.FactTitrantMol:
+		return &f.TitrantMolPerL
+	case schemas.FactAliquot:
+		return &f.AliquotML
+	case schemas.FactSolvent:
+		return &f.SolventML
+	}
+	return &f.EndReading
+}
+
+// factText is the cleaned text of a fact, translated by the schema's values.
+func (d *draft) factText(rule *schemas.Fact, s *statement) string {
+	text := d.cleaned(string(rule.Name), s)
+	for _, v := range rule.Values {
+		if foldEqual([]byte(text), v.Text) {
+			return v.Means
+		}
+	}
+	allowed := schemas.AllowedTexts(rule.Name)
+	if allowed == nil {
+		return text
+	}
+	i := slices.IndexFunc(allowed, func(a string) bool { return foldEqual([]byte(text), a) })
+	if i < 0 {
+		d.repairs.add(s.line, fmt.Sprintf("%s: %s is not known; the fact is not used", rule.Name, cells.Quoted(s.value)))
+		return ""
+	}
+	return allowed[i]
+}
+
+// cleaned is the value of a statement as text that is safe to show.
+func (d *draft) cleaned(field string, s *statement) string {
+	text, replaced, cut := cells.Clean(s.value)
+	if replaced {
+		d.repairs.add(s.line, fmt.Sprintf("%s: characters that cannot be shown replaced", field))
+	}
+	if cut {
+		d.repairs.add(s.line, fmt.Sprintf("%s: cut to %d characters", field, cells.MaxTextRunes))
+	}
+	return text
+}
+
+// checkCount holds the number of rows seen against the one that is stated.
+func (d *draft) checkCount(s *statement) {
+	n, fault := cells.ParseNumber(s.value, d.schema.Dialect.DecimalChar, 0)
+	if fault != cells.NumberOK {
+		d.refuse(s.line, s.start, s.at, "readings", cells.Quoted(s.value)+" is not a number", "it is the count of rows; the line is damaged: export the dump again")
+		return
+	}
+	if n.Value != float64(d.rows) && d.fault == nil { // else it may follow from that
+		d.refuse(d.lastLine, 0, -1, "readings", fmt.Sprintf("%s where line %d states %s", plural(d.rows, "row"), s.line, cells.Quoted(s.value)), "the dump is cut off or damaged; export it again")
+	}
+}
+
+// otherFacts keeps the statements that no rule has used. Where keys are not
+// free, as they are in comment lines, the run says so, and everywhere when the
+// key is nearly a known one: it may be a damaged or misspelt one.
+func (d *draft) otherFacts() {
+	for i := range d.statements {
+		s := &d.statements[i]
+		if s.used || s.mark || d.missing(s.value) {
+			continue
+		}
+		key, _, _ := cells.Clean(s.key)
+		if near := d.nearKey(string(s.key)); near != "" {
+			d.repairs.add(s.line, fmt.Sprintf("%s is nearly %q, kept as it is", cells.Quoted(s.key), near))
+		} else if d.schema.Preamble.Lines == schemas.CellLines {
+			d.repairs.add(s.line, fmt.Sprintf("%s is not in schema %s, kept as it is", cells.Quoted(s.key), d.schema.Name))
+		}
+		d.run.Facts.Other = append(d.run.Facts.Other, Fact{key, d.cleaned(key, s)})
+	}
+}

@@ -1,0 +1,200 @@
+package ingest
+
+import (
+	"fmt"
+	"slices"
+
+	"lastdrop/ingest/cells"
+	"lastdrop/schemas"
+)
+
+// MaxBytes is the largest dump that is read: 64 MiB. A day of one bench has
+// well under one; larger files are no dumps.
+const MaxBytes = 64 << 20
+
+// MinReadings is how many readings a run needs to be a curve at all. Fewer
+// cannot show a slope on both sides of an endpoint. Source: common practice,
+// no source.
+const MinReadings = 5
+
+// Read turns the bytes of one dump into runs. path is used in messages only.
+//
+// Exactly one schema of the set must fit the dump; it is returned, nil when
+// none or several do. Every run of the dump is either in runs, read as the
+// schema says with each repair listed, or has exactly one entry in problems:
+// the first place at fault, with the number of further ones in its text, and
+// Run set unless the layout has one run a dump. A problem without Run concerns
+// the whole dump. Runs keep their number in the dump, so runs with problems
+// leave gaps. data is not kept and not changed.
+func Read(data []byte, path string, set []*schemas.Schema) (runs []Run, schema *schemas.Schema, problems []*schemas.Problem) {
+	if len(data) == 0 {
+		return nil, nil, []*schemas.Problem{{Path: path, Line: 1, Col: 1, Msg: "the dump is empty", Hint: "export it again"}}
+	}
+	if len(data) > MaxBytes {
+		return nil, nil, []*schemas.Problem{{Path: path, Msg: fmt.Sprintf("%d bytes", len(data)), Hint: fmt.Sprintf("a dump has at most %d bytes (64 MiB)", MaxBytes)}}
+	}
+	schema, text, problem := recognise(data, path, set)
+	if problem != nil {
+		return nil, nil, []*schemas.Problem{problem}
+	}
+	r := &reader{schema: schema, text: text, path: path, scan: scannerOf(text, schema)}
+	if schema.Layout == schemas.Long {
+		r.long()
+	} else {
+		r.sections()
+	}
+	return r.runs, schema, r.problems
+}
+
+func scannerOf(t *cells.Text, s *schemas.Schema) cells.Scanner {
+	return cells.Scanner{Body: t.Body, Delimiter: s.Dialect.Delimiter, Quote: s.Dialect.QuoteChar, Comment: s.Dialect.CommentChar}
+}
+
+// reader reads one dump with one schema.
+type reader struct {
+	schema   *schemas.Schema
+	text     *cells.Text
+	path     string
+	scan     cells.Scanner
+	row      cells.Row // the row at hand
+	table    table
+	runs     []Run
+	problems []*schemas.Problem
+	begun    int // runs begun so far
+	trailing int // line of the first line when it has trailing delimiters
+}
+
+// begin begins the next run at a line.
+func (r *reader) begin(line int) *draft {
+	r.begun++
+	d := &draft{reader: r, number: r.begun, line: line, first: len(r.table.readings), end: len(r.table.readings)}
+	if r.begun == 1 && r.trailing > 0 {
+		d.repairs.add(r.trailing, trailingDropped)
+	}
+	return d
+}
+
+// unterminated reports whether the row at hand is a last row that may be cut
+// off and that the schema does not permit.
+func (r *reader) unterminated() bool {
+	return !r.row.Ended && (r.text.Cut || !r.schema.KeepUnterminated)
+}
+
+// passFirstLine passes the line that the schema states as evidence. The rows
+// before it are blank.
+func (r *reader) passFirstLine() {
+	if r.schema.Recognise.FirstLine == "" {
+		return
+	}
+	for r.scan.Next(&r.row) {
+		if r.row.Blank() {
+			continue
+		}
+		if r.row.DropEmptyTail(1) {
+			r.trailing = r.row.Line
+		}
+		return
+	}
+}
+
+// close takes a run into the result, or its problem.
+func (r *reader) close(d *draft) {
+	if d.fault == nil {
+		r.runs = append(r.runs, d.run)
+		return
+	}
+	p := d.fault
+	switch {
+	case d.more == 1:
+		p.Msg += ", and 1 more place"
+	case d.more > 1:
+		p.Msg += fmt.Sprintf(", and %d more places", d.more)
+	}
+	if r.schema.Layout != schemas.Single {
+		p.Run = d.number
+	}
+	r.problems = append(r.problems, p)
+}
+
+// draft is a run while it is read.
+type draft struct {
+	*reader
+	number, line int
+	statements   []statement
+	columns      *columns // nil before the header
+	first, end   int      // of its readings in the table
+	interleaved  bool     // rows of other runs stand between its own
+	count        int      // of its readings
+	rows         int      // seen in the dump, refused ones too
+	lastLine     int      // of the last row seen
+	lastNumber   float64  // in the number column
+	lastTimeS    float64  // in the time column
+	volumeSteps  steps
+	readingSteps steps
+	lost         [2]bool // time, temperature: the column is not used
+	blanks       []int   // lines skipped since the last row of the table
+	decimalMarks int     // numbers with a decimal mark read so far
+	name         string  // in the column that names the run; layout long
+	orphaned     bool    // rows outside any run; layout stacked
+	total        bool    // its footer row has been seen; layout long
+	repairs      repairs
+	run          Run
+	fault        *schemas.Problem // the first in the file
+	more         int              // further ones
+}
+
+// refuse notes why the run cannot be read; at is an offset of the text in the
+// line that begins at start, or negative for the whole line.
+func (d *draft) refuse(line, start, at int, field, msg, hint string) {
+	p := &schemas.Problem{Path: d.path, Line: line, Field: field, Msg: msg, Hint: hint}
+	if at >= 0 {
+		p.Col = d.text.Column(start, at)
+	}
+	if d.fault == nil {
+		d.fault = p
+		return
+	}
+	d.more++
+	if p.Line < d.fault.Line || p.Line == d.fault.Line && p.Col > 0 && (p.Col < d.fault.Col || d.fault.Col == 0) {
+		d.fault = p
+	}
+}
+
+// refuseRow is refuse at an offset of the row at hand.
+func (d *draft) refuseRow(at int, field, msg, hint string) {
+	d.refuse(d.row.Line, d.row.From, at, field, msg, hint)
+}
+
+// finish checks the run when all of it has been seen and makes it.
+func (d *draft) finish() {
+	if d.columns == nil {
+		if d.fault == nil {
+			d.refuse(d.line, 0, -1, "", "no header row", headerWanted(d.schema))
+		}
+		return
+	}
+	d.run = Run{Number: d.number, Line: d.line, Signal: d.columns.signal}
+	d.applyFacts()
+	if d.fault == nil && d.count < MinReadings {
+		d.refuse(d.lastLine, 0, -1, "", fmt.Sprintf("%s, a curve needs at least %d", plural(d.count, "reading"), MinReadings), "the curve is too short; titrate or export again")
+	}
+	if d.fault != nil {
+		return
+	}
+	d.run.ReadingStep, d.run.VolumeStepML = d.readingSteps.step(), d.volumeSteps.step()
+	d.table.fill(d)
+	d.run.Repairs = d.repairs.lines()
+}
+
+func plural(n int, what string) string {
+	if n == 1 {
+		return "1 " + what
+	}
+	return fmt.Sprintf("%d %ss", n, what)
+}
+
+// equalFold reports whether b is one of the titles, upper and lower case
+// alike.
+func equalFold(b []byte, titles []string) bool {
+	return slices.ContainsFunc(titles, func(t string) bool { return foldEqual(b, t) })
+}

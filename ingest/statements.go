@@ -1,0 +1,171 @@
+package ingest
+
+import (
+	"bytes"
+	"fmt"
+	"strings"
+
+	"lastdrop/ingest/cells"
+)
+
+// statement is one key with its value, wherever the dump has it: in a
+// preamble, in the row that ends a run, in a footer.
+type statement struct {
+	key, value []byte
+	line       int
+	start, at  int  // offsets of the line and of the value
+	mark       bool // belongs to the layout; not a fact of its own
+	used       bool
+}
+
+// maxStatements is how many statements of one run are kept.
+const maxStatements = 200
+
+func (d *draft) addStatement(s statement) {
+	if d.statements == nil {
+		d.statements = make([]statement, 0, 16) // a run has a dozen
+	}
+	if len(d.statements) < maxStatements {
+		d.statements = append(d.statements, s)
+		return
+	}
+	d.repairs.add(s.line, fmt.Sprintf("more than %d facts, not used", maxStatements))
+}
+
+// cellStatement reads a row of key and value. A value that holds the delimiter
+// is taken whole.
+func (d *draft) cellStatement() {
+	if d.row.DropEmptyTail(2) {
+		d.repairs.add(d.row.Line, trailingDropped)
+	}
+	row := d.row.Cells
+	if len(row) < 2 || row[0].Empty() {
+		d.repairs.add(d.row.Line, fmt.Sprintf("%s has no key and value, not used", cells.Quoted(d.text.Body[d.row.From:d.row.To])))
+		return
+	}
+	value := row[1]
+	d.strayQuote(value)
+	if len(row) > 2 {
+		value.To, value.Quoted = row[len(row)-1].To, false
+		d.repairs.add(d.row.Line, "the value holds the delimiter and was taken whole")
+	}
+	d.state(row[0], value, false)
+}
+
+// strayQuote tells a quote within an unquoted text, which is kept: it may be
+// the rest of a damaged pair.
+func (d *draft) strayQuote(c cells.Cell) {
+	if q := d.schema.Dialect.QuoteChar; q != 0 && !c.Quoted && bytes.IndexByte(d.scan.Bytes(c), q) >= 0 {
+		d.repairs.add(d.row.Line, "a quote within a text kept as it is")
+	}
+}
+
+// commentStatement reads a comment line of key, separator and value. One
+// without separator is a remark and no fact.
+func (d *draft) commentStatement() {
+	from := d.row.From
+	line := bytes.TrimRight(d.text.Body[from:d.row.To], " ")
+	if bare := bytes.TrimRight(line, " "+string(rune(d.schema.Dialect.Delimiter))); len(bare) < len(line) {
+		d.repairs.add(d.row.Line, trailingDropped) // a spreadsheet adds them when it saves the dump
+		line = bare
+	}
+	open := bytes.IndexByte(line, d.schema.Dialect.CommentChar) + 1
+	at := bytes.IndexByte(line[open:], d.schema.Preamble.Separator)
+	if at < 0 {
+		d.remark(bytes.TrimSpace(line[open:]))
+		return
+	}
+	key, value := bytes.TrimSpace(line[open:open+at]), line[open+at+1:]
+	rest := bytes.TrimLeft(bytes.TrimPrefix(value, []byte{'\t'}), " ") // a further tab may be a damaged digit
+	begin := from + open + at + 1
+	if i := d.secondFact(value); i >= 0 {
+		d.refuseRow(begin+i, "", cells.Quoted(value[i:])+" stands in the line of another fact", "a line end is lost; export the dump again")
+	}
+	d.addStatement(statement{key: key, value: rest, line: d.row.Line, start: from, at: begin + len(value) - len(rest)})
+}
+
+// remark tells a comment line without separator that begins with a known key.
+func (d *draft) remark(b []byte) {
+	d.eachKey(func(title string) {
+		n := len(title)
+		if len(b) > n && foldEqual(b[:n], title) && !partOfWord(b[n]) {
+			d.repairs.add(d.row.Line, fmt.Sprintf("no %q behind %s, the fact is not used", string(d.schema.Preamble.Separator), cells.Quoted(b[:n])))
+		}
+	})
+}
+
+func partOfWord(c byte) bool {
+	return c-'0' < 10 || (c|0x20)-'a' < 26 || c == '_' || c >= 0x80
+}
+
+// secondFact returns where in a value another comment line with a known key
+// begins, -1 for nowhere: two lines have become one.
+func (d *draft) secondFact(value []byte) int {
+	for i, c := range value {
+		if c != d.schema.Dialect.CommentChar {
+			continue
+		}
+		key, _, found := bytes.Cut(value[i+1:], []byte{d.schema.Preamble.Separator})
+		if found && d.knownKey(bytes.TrimSpace(key)) {
+			return i
+		}
+	}
+	return -1
+}
+
+func (d *draft) knownKey(key []byte) bool {
+	known := false
+	d.eachKey(func(title string) { known = known || foldEqual(key, title) })
+	return known
+}
+
+// eachKey calls f with every key that the schema maps.
+func (d *draft) eachKey(f func(title string)) {
+	each := func(titles []string) {
+		for _, t := range titles {
+			f(t)
+		}
+	}
+	for i := range d.schema.Facts {
+		each(d.schema.Facts[i].Titles)
+	}
+	for i := range d.schema.Indicated {
+		each(d.schema.Indicated[i].Titles)
+		each(d.schema.Indicated[i].KindTitles)
+	}
+}
+
+// nearKey returns the known key that a text most likely was meant to be, ""
+// for none: one change in every eight letters.
+func (d *draft) nearKey(key string) string {
+	near, least := "", 0
+	d.eachKey(func(title string) {
+		n := changes(strings.ToLower(key), strings.ToLower(title))
+		if n <= 1+len(title)/8 && (near == "" || n < least) {
+			near, least = title, n
+		}
+	})
+	return near
+}
+
+// changes is the least number of bytes to put in, take out or replace to make
+// b of a (Levenshtein distance).
+func changes(a, b string) int {
+	row := make([]int, len(b)+1)
+	for j := range row {
+		row[j] = j
+	}
+	for i := range len(a) {
+		diagonal := row[0]
+		row[0] = i + 1
+		for j := range len(b) {
+			replaced := diagonal
+			if a[i] != b[j] {
+				replaced++
+			}
+			diagonal = row[j+1]
+			row[j+1] = min(replaced, diagonal+1, row[j]+1)
+		}
+	}
+	return row[len(b)]
+}
