@@ -63,7 +63,7 @@ func relativeNoise(v, y, w []float64, stepY float64) float64 {
 		r[i] = math.Abs(y[i+1]-a*y[i]-(1-a)*y[i+2]) / math.Sqrt(1+a*a+(1-a)*(1-a)) / level[i+1]
 	}
 	least := math.Max(leastRelSD, stepY/math.Sqrt(12)/median(level))
-	return math.Min(math.Max(1.4826*median(r), least), 0.03)
+	return math.Min(math.Max(trimmedSD(r), least), 0.03)
 }
 
 func (c *conduct) sse(from, to int) float64 { return c.prefix[to+1].minus(c.prefix[from]).sse() }

@@ -18,7 +18,8 @@ const calibrationU = 0.01
 // readings reaches the fixed reading. Its uncertainty joins the reading's
 // noise and calibration, carried through the slope, and the burette's; where
 // the bracket holds a leap of more than half a decade the curve inside it is
-// a guess and u is at least bracket/sqrt(12).
+// a guess: the truth lies anywhere in it, so the interval is the bracket's
+// middle +- 0.475 h and u the distance to expect, sqrt(h^2/12 + (V-middle)^2).
 //
 // With noise the readings may pass the value several times: the middle of
 // the first and last crossing is taken and half their distance joins u. ok is
@@ -62,10 +63,12 @@ func (k *cleaned) atReadingInterval(e *Estimate, i int, scatter float64) {
 	slope := math.Max(math.Abs(e.Rise)/h, 1e-9)
 	e.U = math.Sqrt(sq(k.noise/slope) + sq(calibrationU/slope) + sq(k.uv) + sq(scatter))
 	half := student95 * e.U
-	if e.Leap = e.Rise > leapDecades; e.Leap {
-		e.U, half = math.Max(e.U, h/math.Sqrt(12)), math.Max(half, uniform95*h)
-	}
 	e.Low, e.High = e.V-half, e.V+half
+	if e.Leap = e.Rise > leapDecades; e.Leap {
+		middle := (k.v[i] + k.v[i+1]) / 2
+		e.U = math.Max(e.U, math.Sqrt(sq(h)/12+sq(e.V-middle)))
+		e.Low, e.High = math.Min(e.Low, middle-uniform95*h), math.Max(e.High, middle+uniform95*h)
+	}
 }
 
 func sq(x float64) float64 { return x * x }

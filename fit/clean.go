@@ -123,9 +123,12 @@ func (k *cleaned) without(drop func(i int) bool) cleaned {
 	return r
 }
 
-// strayBound is the two-sided normal quantile at which a run of n clean
-// readings loses one with probability rate at most (Bonferroni). A fixed
-// bound would name a stray in 3 to 6 % of clean runs.
+// strayBound is the two-sided bound at which a run of n clean readings loses
+// one with probability rate at most (Bonferroni). A fixed bound would name a
+// stray in 3 to 6 % of clean runs. The noise is itself an estimate, from n/2
+// differences, so the quantile is Student's with the degrees of freedom that
+// they are worth.
 func strayBound(n int, rate float64) float64 {
-	return distuv.UnitNormal.Quantile(1 - rate/2/float64(max(n, 1)))
+	dof := math.Max(trimmedWorth*float64(n)/2, 3)
+	return distuv.StudentsT{Mu: 0, Sigma: 1, Nu: dof}.Quantile(1 - rate/2/float64(max(n, 1)))
 }

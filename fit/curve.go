@@ -76,8 +76,13 @@ func (c *Curve) Decade() float64 {
 // two on either side of a bracket and one more (common practice, no source).
 const minReadings = 5
 
+// absurd is a number that no burette and no electrode gives; beyond it sums of
+// squares could overflow.
+const absurd = 1e9
+
 // Check returns what makes the curve unfit for any estimator: unequal
-// lengths, a value that is not finite, too few readings.
+// lengths, a value that is not finite or absurdly large, too few readings, a
+// conductivity that is nowhere above 0.
 func (c *Curve) Check() error {
 	if len(c.V) != len(c.Y) {
 		return fmt.Errorf("%d volumes and %d readings; as many of each are needed", len(c.V), len(c.Y))
@@ -85,10 +90,15 @@ func (c *Curve) Check() error {
 	if len(c.V) < minReadings {
 		return fmt.Errorf("%d readings; a curve needs at least %d", len(c.V), minReadings)
 	}
+	top := math.Inf(-1)
 	for i := range c.V {
-		if math.IsNaN(c.V[i]+c.Y[i]) || math.IsInf(c.V[i]+c.Y[i], 0) {
-			return fmt.Errorf("reading %d is (%g mL, %g); finite numbers are needed", i+1, c.V[i], c.Y[i])
+		if !(math.Abs(c.V[i]) < absurd && math.Abs(c.Y[i]) < absurd) {
+			return fmt.Errorf("reading %d is (%g mL, %g); finite numbers below %g are needed", i+1, c.V[i], c.Y[i], absurd)
 		}
+		top = math.Max(top, c.Y[i])
+	}
+	if c.Signal == Conductivity && top <= 0 {
+		return fmt.Errorf("no conductivity is above 0 (highest %g mS/cm); is the cell connected?", top)
 	}
 	return nil
 }

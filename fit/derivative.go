@@ -2,6 +2,7 @@ package fit
 
 import (
 	"math"
+	"sort"
 )
 
 // Derivative is the name of the estimator of this file.
@@ -42,16 +43,16 @@ func newDerivative(k *cleaned, l Limits) (*derivative, error) {
 	return &derivative{k: k, inv: inv, l: l, cand: inv.candidates(l)}, nil
 }
 
-// estimates returns the accepted endpoints in rising volume.
-func (d *derivative) estimates() []Estimate {
-	var out []Estimate
+// estimates returns the accepted endpoints in rising volume, and jumps that
+// stand out but are known too badly to be called endpoints.
+func (d *derivative) estimates() (out, unsure []Estimate) {
 	var kept []candidate
 	for _, c := range d.cand {
 		if !d.stands(c) {
 			continue
 		}
 		e := d.estimate(c)
-		if d.unfit(e) {
+		if d.outside(e) {
 			continue
 		}
 		if n := len(out); n > 0 && !d.apart(out[n-1], e) {
@@ -62,10 +63,18 @@ func (d *derivative) estimates() []Estimate {
 		}
 		out, kept = append(out, e), append(kept, c)
 	}
+	accepted := out[:0]
 	for i := range out {
-		d.finish(&out[i], kept[i])
+		e := out[i]
+		d.finish(&e, kept[i])
+		if d.tooWide(e) {
+			unsure = append(unsure, e)
+			continue
+		}
+		accepted = append(accepted, e)
 	}
-	return out
+	sort.SliceStable(accepted, func(i, j int) bool { return accepted[i].V < accepted[j].V })
+	return accepted, unsure
 }
 
 // stands tells whether a candidate rises enough to be a jump: between its
@@ -98,31 +107,44 @@ func (d *derivative) readingsDecide(i int, c candidate) bool {
 func (d *derivative) estimate(c candidate) Estimate {
 	i := d.steepest(c)
 	if !d.readingsDecide(i, c) {
-		return d.estimateGentle(c)
+		e, ok := d.estimateGentle(c)
+		if ok && !d.tooWide(e) {
+			return e
+		}
+		if j := d.largest(c); d.share(j, c) >= partOfTheRise {
+			i = j
+		} else if ok {
+			return e
+		}
 	}
 	k := d.k
 	h := k.v[i+1] - k.v[i]
 	v := k.secondDerivativeZero(i)
 	return Estimate{
-		Estimator: Derivative, Kind: Inflection, V: v, U: h / math.Sqrt(12), Contrast: c.contrast,
+		Estimator: Derivative, Kind: Inflection, V: v, U: h / math.Sqrt(12), Contrast: c.contrast, ByReadings: true,
 		Reading: k.reading(k.u[i] + (v-k.v[i])/h*(k.u[i+1]-k.u[i])),
 		Bracket: [2]int{k.at[i], k.at[i+1]}, Rise: k.u[i+1] - k.u[i], Leap: d.share(i, c) >= mostOfTheRise,
 	}
 }
 
 // estimateGentle places a candidate whose rise spreads over many increments.
-func (d *derivative) estimateGentle(c candidate) Estimate {
-	g, ok := d.inv.place(c)
-	if !ok {
+// ok is false where the curve leans over between readings, so that the place
+// in V and the place in u do not lie in one increment.
+func (d *derivative) estimateGentle(c candidate) (e Estimate, ok bool) {
+	g, found := d.inv.place(c)
+	if !found {
 		g = gentle{u: c.u, v: c.v, noise: d.inv.uncertainty(c)}
 	}
 	k := d.k
 	i := k.bracketOf(g.v)
+	if slack := 3 * k.noise; g.u < k.u[i]-slack || g.u > k.u[i+1]+slack {
+		return e, false
+	}
 	return Estimate{
-		Estimator: Derivative, Kind: Inflection, V: g.v, Contrast: c.contrast, Reading: k.reading(g.u),
+		Estimator: Derivative, Kind: Inflection, V: g.v, Contrast: c.contrast, Reading: k.reading(min(max(g.u, k.u[i]), k.u[i+1])),
 		U:       math.Hypot(g.noise, math.Max(d.share(i, c), 0)*(k.v[i+1]-k.v[i])/math.Sqrt(3)),
 		Bracket: [2]int{k.at[i], k.at[i+1]}, Rise: k.u[i+1] - k.u[i],
-	}
+	}, true
 }
 
 func (d *derivative) share(i int, c candidate) float64 {
@@ -132,13 +154,17 @@ func (d *derivative) share(i int, c candidate) float64 {
 // steepest returns the steepest of the increments that reach between the
 // half-height points.
 func (d *derivative) steepest(c candidate) int {
+	return d.best(c, func(i int) float64 { return (d.k.u[i+1] - d.k.u[i]) / (d.k.v[i+1] - d.k.v[i]) })
+}
+
+func (d *derivative) best(c candidate, score func(i int) float64) int {
 	k, best, most := d.k, d.k.bracketOf(c.v), math.Inf(-1)
 	for i := 0; i+1 < len(k.u); i++ {
 		if k.u[i+1] < c.lo || k.u[i] > c.hi {
 			continue
 		}
-		if slope := (k.u[i+1] - k.u[i]) / (k.v[i+1] - k.v[i]); slope > most {
-			best, most = i, slope
+		if s := score(i); s > most {
+			best, most = i, s
 		}
 	}
 	return best
@@ -166,16 +192,25 @@ func (k *cleaned) secondDerivativeZero(i int) float64 {
 	return v[i] + (v[i+1]-v[i])*a/(a-b)
 }
 
-// unfit tells whether an estimate lies at an end of the data, too near the
-// last reading, or is too wide to be called an endpoint. A wide bracket is no
-// reason: it has a flag of its own.
-func (d *derivative) unfit(e Estimate) bool {
+// outside tells whether an estimate lies at an end of the data or too near the
+// last reading.
+func (d *derivative) outside(e Estimate) bool {
 	k := d.k
 	n := len(k.v)
-	if e.Bracket[0] == k.at[0] || e.V <= 0 || k.v[n-1] < e.V*(1+d.l.PastPercent/100) {
-		return true
-	}
-	return !e.Leap && student95*e.U > d.l.HalfWidthMost/100*e.V
+	return e.Bracket[0] == k.at[0] || e.V <= 0 || k.v[n-1] < e.V*(1+d.l.PastPercent/100)
+}
+
+// tooWide tells whether an estimate from many readings is known too badly to
+// be called an endpoint. A wide bracket has a flag of its own.
+func (d *derivative) tooWide(e Estimate) bool {
+	return !e.ByReadings && student95*e.U > d.l.HalfWidthMost/100*e.V
+}
+
+// largest returns the increment with the largest rise among those that reach
+// between the half-height points: a stray dose across a gentle jump is not
+// the steepest increment, but it hides the place.
+func (d *derivative) largest(c candidate) int {
+	return d.best(c, func(i int) float64 { return d.k.u[i+1] - d.k.u[i] })
 }
 
 // apart tells whether two neighbouring endpoints are two: at least three
@@ -200,7 +235,7 @@ func (d *derivative) apart(a, b Estimate) bool {
 // finish adds what leaving out blocks of readings does and the interval. An
 // endpoint that single readings decide does not hang on its flanks.
 func (d *derivative) finish(e *Estimate, c candidate) {
-	if !d.readingsDecide(d.steepest(c), c) {
+	if !e.ByReadings {
 		e.Moves = d.moves(c)
 		e.U = math.Hypot(e.U, e.Moves)
 	}

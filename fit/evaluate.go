@@ -18,6 +18,7 @@ type Result struct {
 	Shape     *spline.Shape // y in the curve's unit against V; nil for conductivity
 	Corrected []float64     // of Used: conductivity corrected for dilution; nil else
 	Arms      []Arm         // nil but for conductivity
+	Unsure    []Estimate    // jumps that stand out but are known too badly to be endpoints
 	Compared  []Compared    // each indicated endpoint with its nearest refit of like kind
 }
 
@@ -50,6 +51,8 @@ func Evaluate(c *Curve, estimator string, l Limits) (*Result, error) {
 func choose(c *Curve, estimator string) (string, error) {
 	conductivity := c.Signal == Conductivity
 	switch {
+	case c.Signal < PH || c.Signal > Conductivity:
+		return "", fmt.Errorf("signal %d is none of pH, potential and conductivity", c.Signal)
 	case estimator == "" && conductivity:
 		return TwoLine, nil
 	case estimator == "" && c.EndReading != nil:
@@ -86,7 +89,8 @@ func potentiometric(c *Curve, k *cleaned, name string, l Limits) (*Result, error
 	if r.Shape, err = spline.NewShape(k.v, k.readings()); err != nil {
 		return nil, err
 	}
-	inflections := d.estimates()
+	inflections, unsure := d.estimates()
+	r.Unsure = unsure
 	r.Residuals = d.inv.residuals(k)
 	var fixed []Estimate
 	if c.EndReading != nil {
@@ -176,6 +180,8 @@ func conductometric(c *Curve, k *cleaned, name string, l Limits) *Result {
 	for _, e := range es {
 		if student95*e.U <= l.HalfWidthMost/100*e.V {
 			kept = append(kept, e)
+		} else {
+			r.Unsure = append(r.Unsure, e)
 		}
 	}
 	r.Endpoints = answers(kept, nil)

@@ -38,7 +38,10 @@ type Compared struct {
 }
 
 // Overshoot is what the overshoot rule saw.
-type Overshoot struct{ Dose, Median, Times, Rise, Percent float64 }
+type Overshoot struct {
+	Dose, Median, Times, Rise, Percent float64
+	Beside                             bool // the dose lies beside the bracket
+}
 
 // judge sets the flags of an evaluation from its endpoints.
 func judge(c *Curve, k *cleaned, r *Result, l Limits, endsInJump bool) {
@@ -60,9 +63,18 @@ func judge(c *Curve, k *cleaned, r *Result, l Limits, endsInJump bool) {
 	if c.Signal == Conductivity && c.V0 <= 0 {
 		r.flag(Flag{Name: "dilution-unknown", Weight: Doubtful, Unit: "mL"})
 	}
-	if len(r.Endpoints) == 0 {
+	if len(r.Unsure) > 0 {
+		r.unsure(len(r.Endpoints) == 0 && c.Expected, l)
+	} else if len(r.Endpoints) == 0 {
 		r.missing(c, k, endsInJump, l)
 	}
+}
+
+// unsure tells of a jump or break that stands out but whose place is known
+// too badly: lost in silence it would be missed among the others.
+func (r *Result) unsure(disputed bool, l Limits) {
+	u := r.Unsure[0]
+	r.flag(Flag{Name: "no-endpoint", Weight: heavier(disputed), Figure: 100 * student95 * u.U / u.V, Limit: l.HalfWidthMost, Unit: "%", At: u.Bracket[:], About: u})
 }
 
 // poorFit flags an endpoint that hangs on a few readings.
@@ -140,30 +152,38 @@ func (r *Result) like(ind Indicated) (p Compared, ok bool) {
 	return p, ok
 }
 
-// overshoot flags a dose across the fitted endpoint that is large against its
-// neighbours and against the endpoint.
+// overshoot flags a dose across the fitted endpoint, or right beside its
+// bracket, that is large against its neighbours and against the endpoint:
+// where a jump begins or ends inside such a dose, the steepest increment left
+// is the one beside it.
 func (k *cleaned) overshoot(r *Result, e *Endpoint, n int, l Limits) {
-	if e.Kind == Break || e.Rise <= l.OvershootDecades {
+	if e.Kind == Break {
 		return
 	}
-	o, ok := k.dose(e)
-	o.Rise = e.Rise
-	if !ok || o.Times < l.OvershootTimes || o.Percent < l.OvershootPercent {
-		return
-	}
-	weight := Doubtful
-	for _, p := range r.Compared {
-		if p.Endpoint == n && math.Abs(p.Refit.V-p.Indicated.V) > p.Limit {
-			weight = Disputed
+	at := k.bracketOf(e.V)
+	for _, i := range [3]int{at, at - 1, at + 1} {
+		if i < 0 || i+1 >= len(k.v) {
+			continue
 		}
+		o, ok := k.dose(i, e.V)
+		if !ok || o.Rise <= l.OvershootDecades || o.Times < l.OvershootTimes || o.Percent < l.OvershootPercent {
+			continue
+		}
+		o.Beside = i != at
+		weight := Doubtful
+		for _, p := range r.Compared {
+			if p.Endpoint == n && math.Abs(p.Refit.V-p.Indicated.V) > p.Limit {
+				weight = Disputed
+			}
+		}
+		r.flag(Flag{Name: "overshoot", Weight: weight, Endpoint: n, Figure: o.Percent, Limit: l.OvershootPercent, Unit: "%", At: []int{k.at[i], k.at[i+1]}, About: o})
+		return
 	}
-	r.flag(Flag{Name: "overshoot", Weight: weight, Endpoint: n, Figure: o.Percent, Limit: l.OvershootPercent, Unit: "%", At: e.Bracket[:], About: o})
 }
 
-// dose compares the increment across an endpoint with the median of its six
-// neighbours, three on either side where there are as many.
-func (k *cleaned) dose(e *Endpoint) (o Overshoot, ok bool) {
-	i := k.bracketOf(e.V)
+// dose compares increment i with the median of its six neighbours, three on
+// either side where there are as many, and with the endpoint at v.
+func (k *cleaned) dose(i int, v float64) (o Overshoot, ok bool) {
 	var near []float64
 	for j := i - 3; j <= i+3; j++ {
 		if j != i && j >= 0 && j+1 < len(k.v) {
@@ -173,8 +193,8 @@ func (k *cleaned) dose(e *Endpoint) (o Overshoot, ok bool) {
 	if len(near) == 0 {
 		return o, false
 	}
-	o.Dose, o.Median = k.v[i+1]-k.v[i], median(near)
-	o.Times, o.Percent = o.Dose/o.Median, 100*o.Dose/e.V
+	o.Dose, o.Median, o.Rise = k.v[i+1]-k.v[i], median(near), math.Abs(k.u[i+1]-k.u[i])
+	o.Times, o.Percent = o.Dose/o.Median, 100*o.Dose/v
 	return o, true
 }
 

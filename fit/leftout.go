@@ -79,7 +79,7 @@ func (r *Result) movedBy(c *Curve, raw *cleaned, name string, l Limits) float64 
 	} else {
 		raw.noise = r.Noise / raw.decade
 		if d, err := newDerivative(raw, l); err == nil && name == Derivative {
-			with = d.estimates()
+			with, _ = d.estimates()
 		} else if c.EndReading != nil {
 			with = fixedReading(c, raw)
 		}
