@@ -114,8 +114,12 @@ func (s *sentences) disagrees(f fit.Flag) string {
 
 func (s *sentences) overshoot(f fit.Flag) string {
 	o := f.About.(fit.Overshoot)
-	return fmt.Sprintf("The dose after line %d was %s mL, %s %% of the endpoint volume (limit %s %%) and %s times its neighbours (limit %s); the %s changed by %s inside it.",
-		s.line(f.At[0]), volume(o.Dose), report.Short(o.Percent, 2), report.Short(f.Limit, 2), report.Short(o.Times, 2),
+	beside := ""
+	if o.Beside {
+		beside = ", beside the bracket of the endpoint,"
+	}
+	return fmt.Sprintf("The dose after line %d%s was %s mL, %s %% of the endpoint volume (limit %s %%) and %s times its neighbours (limit %s); the %s changed by %s inside it.",
+		s.line(f.At[0]), beside, volume(o.Dose), report.Short(o.Percent, 2), report.Short(f.Limit, 2), report.Short(o.Times, 2),
 		report.Short(fit.Defaults().OvershootTimes, 2), s.signal(), s.change(o.Rise*s.curve.Decade()))
 }
 
@@ -130,6 +134,9 @@ func (s *sentences) wideInterval(f fit.Flag) string {
 func (s *sentences) noEndpoint(f fit.Flag) string {
 	l := fit.Defaults()
 	var t string
+	if u, ok := f.About.(fit.Estimate); ok {
+		return fmt.Sprintf("Something stands out near %s mL, but its place is known to ± %s %% only (limit %s %%): no endpoint can be named there.", report.Fixed(u.V, 2), report.Short(f.Figure, 2), report.Short(f.Limit, 2))
+	}
 	switch {
 	case s.curve.Signal == fit.Conductivity:
 		t = fmt.Sprintf("No break found: no two straight arms of at least 4 readings meet with an angle that stands out and a 95 %% half-width below %s %%.", report.Short(l.HalfWidthMost, 2))
