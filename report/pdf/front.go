@@ -1,0 +1,258 @@
+package pdf
+
+import (
+	"strings"
+
+	"lastdrop/report"
+	"lastdrop/report/figure"
+	"lastdrop/report/pdf/paper"
+)
+
+// planFront plans the front page and those it continues on.
+func (d *document) planFront() {
+	f := newFlow(17, 24, d.foot())
+	if d.volume > 1 {
+		d.pages = append(d.pages, page{what: "front page", draw: d.drawVolumeFront, bookmarks: []paper.Bookmark{{Text: "volume " + whole(d.volume)}}})
+		return
+	}
+	f.put(d.headlineItem())
+	f.add(6, d.totalsItem())
+	list := d.listSection()
+	f.addSection(air, list)
+	f.addSection(air, d.proceduresSection())
+	at := f.addSection(air, d.unreadSection())
+	if at >= 0 {
+		d.unreadPage = at + 1
+	}
+	f.addSection(air, d.waitingSection())
+	for i, items := range f.pages {
+		p := page{what: "front page"}
+		if i == 0 {
+			p.bookmarks = []paper.Bookmark{{Text: "night, front page"}}
+		}
+		if i == at {
+			p.bookmarks = append(p.bookmarks, paper.Bookmark{Text: "unread"})
+		}
+		p.draw = func(s *figure.Sheet, number int) {
+			defer d.frame(s, number, "", "")()
+			drawItems(s, items, left)
+		}
+		d.pages = append(d.pages, p)
+	}
+}
+
+// drawVolumeFront is the first page of a further volume.
+func (d *document) drawVolumeFront(s *figure.Sheet, number int) {
+	defer d.frame(s, number, "", "")()
+	s.Text(left, 28, headStyle.As(figure.Bold), "Volume "+whole(d.volume)+" of "+whole(d.volumes)+": further runs of the night.")
+	s.Text(left, 35, leadStyle, "The headline, the list and the counts of the night stand in volume 1.")
+}
+
+// headline returns what happened and what to do.
+func (d *document) headline() (happened, do, next string) {
+	n := d.n
+	runs, unread := len(n.Evaluations), len(n.Unread)
+	settle, doubt := n.Count(report.VerdictDisputed), n.Count(report.VerdictDoubtful)
+	sound := n.Count(report.VerdictSound)
+	switch {
+	case runs == 0 && unread == 0:
+		return "No run in this sweep.", "Nothing is to be done. " + d.besides(), ""
+	case settle+doubt+unread == 0:
+		return "Nothing to do: " + allSound(runs), "Sound means " + report.SoundMeans + ". " + d.besides(), ""
+	}
+	var parts []string
+	if settle > 0 {
+		parts = append(parts, plural(counted(settle), settle, "run")+" must be settled")
+	}
+	if doubt > 0 {
+		parts = append(parts, named(doubt, len(parts) == 0)+needs(doubt)+" a look")
+	}
+	if unread > 0 {
+		parts = append(parts, counted(unread)+are(unread)+" unread")
+	}
+	happened = capital(strings.Join(parts, ", ")) + "."
+	if runs > 0 {
+		do = whole(sound) + " of " + plural(whole(runs), runs, "run") + " carry no objection, which is not an approval. "
+		if sound == 1 {
+			do = strings.Replace(do, "carry", "carries", 1)
+		}
+	}
+	do += d.besides()
+	if len(d.large) == 0 {
+		return happened, do + "What could not be read has no result: see below.", ""
+	}
+	first := &n.Evaluations[d.large[0]]
+	return happened, do + "Begin with " + name(first) + ".", lookAt(first)
+}
+
+// besides tells what else a reader must know of the night.
+func (d *document) besides() string {
+	out := ""
+	if w := len(d.n.Waiting); w > 0 {
+		out += capital(plural(counted(w), w, "dump")) + " waits for the next sweep. "
+		if w > 1 {
+			out = strings.Replace(out, "waits", "wait", 1)
+		}
+	}
+	if d.n.Estimator != "" {
+		out += "The estimator " + d.n.Estimator + " was asked for by name. "
+	}
+	return out
+}
+
+func allSound(runs int) string {
+	if runs == 1 {
+		return "the one run is sound."
+	}
+	return "all " + plural(counted(runs), runs, "run") + " are sound."
+}
+
+// named is a count that names runs where no count before it did.
+func named(n int, first bool) string {
+	if first {
+		return plural(counted(n), n, "run")
+	}
+	return counted(n)
+}
+
+func needs(n int) string {
+	if n == 1 {
+		return " needs"
+	}
+	return " need"
+}
+
+func are(n int) string {
+	if n == 1 {
+		return " is"
+	}
+	return " are"
+}
+
+// lookAt is the command that shows the run's dump, "" for a run without one.
+func lookAt(e *report.Evaluation) string {
+	if e.Dump == "" {
+		return ""
+	}
+	return look(e.Dump)
+}
+
+// name is how a sentence calls a run.
+func name(e *report.Evaluation) string {
+	switch {
+	case e.Facts.Sample != "":
+		return figure.Shorten(leadStyle, e.Facts.Sample, 60)
+	case e.ID != "":
+		return "run " + e.ID
+	}
+	return "the first below"
+}
+
+func (d *document) headlineItem() item {
+	happened, do, next := d.headline()
+	head := headStyle.As(figure.Bold)
+	first := figure.Wrap(head, happened, live)
+	second := figure.Wrap(leadStyle, do, live)
+	h := 11.0 + 6.4*float64(len(first)-1) + 6.4 + leadLead*float64(len(second)-1)
+	if next != "" {
+		h += 5.2
+	}
+	return item{height: h + 1, draw: func(s *figure.Sheet, y float64) {
+		y = paragraph(s, left, y+11, 6.4, head, first)
+		y = paragraph(s, left, y, leadLead, leadStyle, second)
+		if next != "" {
+			command(s, left, y+0.6, "To look closer:", next)
+		}
+	}}
+}
+
+// command sets the next command behind what it is for: smaller, then on a
+// second line, before anything of it is left out.
+func command(s *figure.Sheet, x, y float64, what, next string) {
+	x = s.Text(x, y, titleStyle, what) + 2
+	if figure.TextWidth(monoBody, next) <= right-x {
+		s.Text(x, y, monoBody, next)
+		return
+	}
+	st := monoNote.In(figure.Black)
+	lines := figure.Wrap(st, next, right-x)
+	if len(lines) > 2 {
+		lines = []string{figure.Shorten(st, next, right-x)}
+	}
+	paragraph(s, x, y, 2.9, st, lines)
+}
+
+// total is one of the four counts of a night.
+type total struct {
+	mark        figure.Urgency
+	count       int
+	word, means string
+	where       string
+}
+
+func (d *document) totals() [4]total {
+	n := d.n
+	out := [4]total{
+		{mark: figure.Settle, count: n.Count(report.VerdictDisputed), word: "disputed", means: "a second person must settle"},
+		{mark: figure.Look, count: n.Count(report.VerdictDoubtful), word: "doubtful", means: "look before use"},
+		{mark: figure.Calm, count: n.Count(report.VerdictSound), word: "sound", means: report.SoundMeans},
+		{mark: figure.Missing, count: len(n.Unread), word: "unread", means: "not read, no result"},
+	}
+	for i, v := range [...]report.Verdict{report.VerdictDisputed, report.VerdictDoubtful, report.VerdictSound} {
+		out[i].where = pageRange(d.runPages(v))
+	}
+	if out[2].where == "" {
+		out[2].where = pageRange(d.smallPages[0], d.smallPages[1])
+	}
+	if d.unreadPage == 1 {
+		out[3].where = "below"
+	} else if d.unreadPage > 1 {
+		out[3].where = "page " + whole(d.unreadPage)
+	}
+	return out
+}
+
+// runPages returns the first and last large page of a verdict, 0 for none.
+func (d *document) runPages(v report.Verdict) (from, to int) {
+	for i, k := range d.large {
+		if d.n.Evaluations[k].Verdict != v {
+			continue
+		}
+		if from == 0 {
+			from = d.runPage[k]
+		}
+		to = len(d.pages)
+		if i+1 < len(d.large) {
+			to = d.runPage[d.large[i+1]] - 1
+		} else if d.smallPages[0] > 0 {
+			to = d.smallPages[0] - 1
+		}
+	}
+	return from, to
+}
+
+func (d *document) totalsItem() item {
+	return item{height: 17, draw: func(s *figure.Sheet, y float64) {
+		for i, t := range d.totals() {
+			x := left + 45*float64(i)
+			end := s.Block("total", figure.Box{Left: x, Top: y, Right: x + 41, Bottom: y + 17})
+			ink := rule(figure.Black, 0.4)
+			if i == 0 && t.count > 0 {
+				ink.WidthPt = 1
+			}
+			s.Rule(ink, x, x+41, y)
+			s.Urgent(t.mark, x+3.2, y+7.4, 6)
+			number, word := numberStyle, leadStyle.As(figure.Bold)
+			if figure.TextWidth(number, whole(t.count))+1.5+figure.TextWidth(word, t.word) > 32 {
+				number.SizePt = headStyle.SizePt
+			}
+			to := s.Text(x+9, y+9.8, number, whole(t.count))
+			s.Text(to+1.5, y+9.8, word, t.word)
+			s.Text(x+9, y+13.4, noteStyle, t.means)
+			if t.count > 0 {
+				s.Text(x+9, y+16.5, noteStyle.In(figure.Blue), t.where)
+			}
+			end()
+		}
+	}}
+}

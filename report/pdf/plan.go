@@ -1,0 +1,275 @@
+package pdf
+
+import (
+	"sort"
+
+	"lastdrop/report"
+	"lastdrop/report/figure"
+	"lastdrop/report/pdf/paper"
+)
+
+// document is a night being laid out. All pages are planned before the first
+// is drawn, so that each can say where the others are.
+type document struct {
+	n             *report.Night
+	width, height float64 // of the sheet, mm
+	figureLess    float64 // mm that figures are lower than on A4
+	pages         []page
+	runPage       []int // page of each evaluation's large page, 0 for none
+	large         []int // evaluations with a large page, most urgent first
+	small         []int // sound runs with a small picture
+	smallPages    [2]int
+	unreadPage    int
+	volume        int
+	volumes       int
+}
+
+// page is one page to be drawn.
+type page struct {
+	what      string // for Result.Failed
+	facts     []string
+	bookmarks []paper.Bookmark
+	draw      func(s *figure.Sheet, number int)
+}
+
+func newDocument(n *report.Night, o Options) (*document, error) {
+	if o.Pages != "" && o.Pages != "flagged" && o.Pages != "all" {
+		return nil, &OptionError{Option: "pages", Value: o.Pages, Want: "flagged or all"}
+	}
+	d := &document{n: n, width: 210, height: 297, runPage: make([]int, len(n.Evaluations)), volume: o.Volume}
+	if o.Letter {
+		d.width, d.height, d.figureLess = 215.9, 279.4, 18
+	}
+	d.choose(o.Pages == "all")
+	if err := d.cut(o.Volume); err != nil {
+		return nil, err
+	}
+	d.planFront()
+	d.planRuns()
+	d.planSmall()
+	return d, nil
+}
+
+// choose sorts the runs that get a large page by urgency, and the sound ones
+// that get a small picture by procedure.
+func (d *document) choose(all bool) {
+	for i := range d.n.Evaluations {
+		e := &d.n.Evaluations[i]
+		if all || e.Verdict != report.VerdictSound {
+			d.large = append(d.large, i)
+		}
+		if e.Verdict == report.VerdictSound && e.Picture != nil {
+			d.small = append(d.small, i)
+		}
+	}
+	sort.SliceStable(d.large, func(a, b int) bool {
+		x, y := &d.n.Evaluations[d.large[a]], &d.n.Evaluations[d.large[b]]
+		if u, v := urgency(x.Verdict), urgency(y.Verdict); u != v {
+			return u > v
+		}
+		return concern(x) < concern(y)
+	})
+	sort.SliceStable(d.small, func(a, b int) bool {
+		x, y := &d.n.Evaluations[d.small[a]], &d.n.Evaluations[d.small[b]]
+		if x.Facts.Procedure != y.Facts.Procedure {
+			return x.Facts.Procedure < y.Facts.Procedure
+		}
+		return x.Signal < y.Signal
+	})
+}
+
+// cut keeps the large pages of one volume; volume 1 has the front and the
+// small pictures as well.
+func (d *document) cut(volume int) error {
+	d.volumes = max(1, (len(d.large)+VolumePages-1)/VolumePages)
+	if volume < 0 || volume > d.volumes {
+		return &OptionError{Option: "volume", Value: whole(volume), Want: "1 to " + whole(d.volumes)}
+	}
+	if volume == 0 {
+		return nil
+	}
+	from := min((volume-1)*VolumePages, len(d.large))
+	d.large = d.large[from:min(from+VolumePages, len(d.large))]
+	if volume > 1 {
+		d.small = nil
+	}
+	return nil
+}
+
+// urgency ranks verdicts; an unknown one counts as disputed.
+func urgency(v report.Verdict) int {
+	switch v {
+	case report.VerdictSound:
+		return 0
+	case report.VerdictDoubtful:
+		return 1
+	}
+	return 2
+}
+
+// heaviest returns the flag that makes the verdict, nil when there is none.
+func heaviest(e *report.Evaluation) *report.Flag {
+	for i := range e.Flags {
+		if string(e.Flags[i].Weight) == string(e.Verdict) {
+			return &e.Flags[i]
+		}
+	}
+	return nil
+}
+
+// concern ranks a run among those of its verdict, first = 0.
+func concern(e *report.Evaluation) int {
+	if f := heaviest(e); f != nil {
+		return report.Concern(f.Flag)
+	}
+	return report.Concern("")
+}
+
+// planRuns adds the large pages, with a bookmark before each verdict.
+func (d *document) planRuns() {
+	verdict := report.Verdict("")
+	for _, i := range d.large {
+		e := &d.n.Evaluations[i]
+		r := newRunPage(d, e)
+		d.runPage[i] = len(d.pages) + 1
+		marks := []paper.Bookmark{{Text: runBookmark(e), Level: 1}}
+		if e.Verdict != verdict {
+			verdict = e.Verdict
+			marks = append([]paper.Bookmark{{Text: string(verdict)}}, marks...)
+		}
+		for part := range r.parts() {
+			p := page{what: "run " + e.ID + " of " + e.Dump, facts: runFacts(e)}
+			if part == 0 {
+				p.bookmarks = marks
+				p.draw = r.drawFirst
+			} else {
+				p.draw = func(s *figure.Sheet, number int) { r.drawFurther(s, number, part) }
+			}
+			d.pages = append(d.pages, p)
+		}
+	}
+}
+
+func runBookmark(e *report.Evaluation) string {
+	name := e.Facts.Sample
+	if name == "" {
+		name = e.ID
+	}
+	if f := heaviest(e); f != nil {
+		name += ", " + f.Flag
+	}
+	return name
+}
+
+// runFacts are told where a run's page cannot be drawn.
+func runFacts(e *report.Evaluation) []string {
+	return []string{
+		"sample " + orDash(e.Facts.Sample), "procedure " + orDash(e.Facts.Procedure),
+		"run " + e.ID + ", verdict " + string(e.Verdict),
+		place(e.Dump, e.Line, 0) + ", run " + whole(e.Run) + " of that dump",
+	}
+}
+
+// item is a strip of a page: its height, and how to draw it from a height on.
+type item struct {
+	height float64
+	runs   int // how many runs it pictures
+	draw   func(s *figure.Sheet, y float64)
+}
+
+// section is a block that may continue on further pages: its head is repeated
+// there, its foot closes it on each.
+type section struct {
+	head item // drawn first; again on each page that continues it
+	rows []item
+	foot item
+	most int // rows on the first page of the flow; 0 for as many as fit
+}
+
+// placed is an item with its place.
+type placed struct {
+	item
+	y float64
+}
+
+// flow lays items and sections on pages, top to bottom.
+type flow struct {
+	pages  [][]placed
+	y      float64 // where the next item may begin
+	top    float64 // of further pages
+	bottom float64
+}
+
+// newFlow begins at top on the first page and at further on the others.
+func newFlow(top, further, bottom float64) *flow {
+	return &flow{pages: make([][]placed, 1), y: top, top: further, bottom: bottom}
+}
+
+func (f *flow) put(it item) {
+	last := len(f.pages) - 1
+	f.pages[last] = append(f.pages[last], placed{it, f.y})
+	f.y += it.height
+}
+
+func (f *flow) turn() {
+	f.pages = append(f.pages, nil)
+	f.y = f.top
+}
+
+// add places an item with white above it, on the next page if it does not fit.
+func (f *flow) add(white float64, it item) {
+	if f.y+white+it.height > f.bottom && len(f.pages[len(f.pages)-1]) > 0 {
+		f.turn()
+		white = 0
+	}
+	f.y += white
+	f.put(it)
+}
+
+// addSection places a section; at least two of its rows stay with a head. It
+// returns the page, from 0, on which it begins.
+func (f *flow) addSection(white float64, sec section) (page int) {
+	if len(sec.rows) == 0 {
+		return -1
+	}
+	need := sec.head.height + sec.foot.height
+	for _, r := range sec.rows[:min(2, len(sec.rows))] {
+		need += r.height
+	}
+	if f.y+white+need > f.bottom {
+		f.turn()
+		white = 0
+	}
+	f.y += white
+	page = len(f.pages) - 1
+	f.put(sec.head)
+	on := 0
+	for _, r := range sec.rows {
+		full := sec.most > 0 && len(f.pages) == 1 && on >= sec.most
+		if on > 0 && (full || f.y+r.height+sec.foot.height > f.bottom) {
+			f.close(sec)
+			f.turn()
+			f.put(sec.head)
+			on = 0
+		}
+		f.put(r)
+		on++
+	}
+	f.close(sec)
+	return page
+}
+
+func (f *flow) close(sec section) {
+	if sec.foot.draw != nil {
+		f.put(sec.foot)
+	}
+}
+
+// drawItems draws a page of a flow; from is how far left its items reach.
+func drawItems(s *figure.Sheet, items []placed, from float64) {
+	for _, it := range items {
+		end := s.Block("strip", figure.Box{Left: from, Top: it.y, Right: right, Bottom: it.y + it.height})
+		it.draw(s, it.y)
+		end()
+	}
+}

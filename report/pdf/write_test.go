@@ -1,0 +1,324 @@
+package pdf
+
+import (
+	"bytes"
+	"errors"
+	"flag"
+	"fmt"
+	"math"
+	"os"
+	"path/filepath"
+	"regexp"
+	"strings"
+	"testing"
+
+	"lastdrop/report"
+	"lastdrop/report/figure"
+)
+
+var update = flag.Bool("update", false, "rewrite the golden text of the pages")
+
+func write(t *testing.T, n *report.Night, o Options) ([]byte, Result) {
+	t.Helper()
+	var b bytes.Buffer
+	res, err := Write(&b, n, o)
+	if err != nil {
+		t.Fatal(err)
+	}
+	return b.Bytes(), res
+}
+
+// texts draws a night and returns the texts of each page in the order of
+// drawing.
+func texts(t *testing.T, n *report.Night, o Options) [][]string {
+	t.Helper()
+	d, err := newDocument(n, o)
+	if err != nil {
+		t.Fatal(err)
+	}
+	var out [][]string
+	s := figure.NewSheet(d.width, d.height)
+	for i := range d.pages {
+		if says := attempt(s, func() { d.pages[i].draw(s, i+1) }); says != "" {
+			t.Fatalf("page %d: %s", i+1, says)
+		}
+		var page []string
+		for _, b := range s.Boxes {
+			if b.Kind == figure.AText {
+				page = append(page, b.Name)
+			}
+		}
+		out = append(out, page)
+	}
+	return out
+}
+
+// TestSameBytes: two writes of one night are the same file.
+func TestSameBytes(t *testing.T) {
+	for name, c := range nights() {
+		if name == "large" { // has nothing that the others lack
+			continue
+		}
+		a, _ := write(t, c.night, Options{Pages: c.pages})
+		b, _ := write(t, c.night, Options{Pages: c.pages})
+		if !bytes.Equal(a, b) {
+			t.Errorf("%s: two writes differ", name)
+		}
+	}
+}
+
+// TestGolden compares the words and figures of the demo's pages, not the file.
+func TestGolden(t *testing.T) {
+	var b strings.Builder
+	for i, page := range texts(t, demoNight(), Options{}) {
+		fmt.Fprintf(&b, "== page %d\n%s\n", i+1, strings.Join(page, "\n"))
+	}
+	path := filepath.Join("testdata", "pages.txt")
+	if *update {
+		if err := os.WriteFile(path, []byte(b.String()), 0o644); err != nil {
+			t.Fatal(err)
+		}
+	}
+	want, err := os.ReadFile(path)
+	if err != nil {
+		t.Fatal(err)
+	}
+	if got := b.String(); got != string(want) {
+		g, w := strings.Split(got, "\n"), strings.Split(string(want), "\n")
+		for i := range min(len(g), len(w)) {
+			if g[i] != w[i] {
+				t.Fatalf("line %d: got %q, want %q", i+1, g[i], w[i])
+			}
+		}
+		t.Fatalf("%d lines, want %d", len(g), len(w))
+	}
+}
+
+// TestPlaces: who gets a page, and in which order: by verdict, then by the
+// order of concern, whatever the night's own order.
+func TestPlaces(t *testing.T) {
+	n := demoNight()
+	d, err := newDocument(n, Options{})
+	if err != nil {
+		t.Fatal(err)
+	}
+	var order []string
+	for _, i := range d.large {
+		order = append(order, n.Evaluations[i].ID)
+	}
+	// disagrees, no-endpoint, overshoot; then wide-interval twice, dilution-unknown
+	want := "51ad90c2b8f4 0d4f6c28a1b5 9f31c07a52de 77aa01b2c3d4 77aa01b2c3d4 c4d80b1e77a3"
+	if got := strings.Join(order, " "); got != want {
+		t.Errorf("order %s, want %s", got, want)
+	}
+}
+
+// TestHeadlines: one sentence of what happened, one of what to do.
+func TestHeadlines(t *testing.T) {
+	night := func(settle, doubt, sounds, unread int) *report.Night {
+		n := emptyNight()
+		add := func(k int, v report.Verdict) {
+			for range k {
+				n.Evaluations = append(n.Evaluations, report.Evaluation{ID: "0123456789ab", Verdict: v, Dump: "bench-a/0001.csv"})
+			}
+		}
+		add(settle, report.VerdictDisputed)
+		add(doubt, report.VerdictDoubtful)
+		add(sounds, report.VerdictSound)
+		n.Unread = make([]report.Unread, unread)
+		return n
+	}
+	for _, c := range []struct {
+		night        *report.Night
+		want, second string
+	}{
+		{night(4, 6, 50, 3), "Four runs must be settled, six need a look, three are unread.", "50 of 60 runs carry no objection, which is not an approval. Begin with run 0123456789ab."},
+		{night(1, 0, 0, 0), "One run must be settled.", "0 of 1 run carry no objection, which is not an approval. Begin with run 0123456789ab."},
+		{night(0, 1, 1, 1), "One run needs a look, one is unread.", "1 of 2 runs carries no objection, which is not an approval. Begin with run 0123456789ab."},
+		{night(0, 0, 9, 0), "Nothing to do: all nine runs are sound.", "Sound means no objection, not an approval. "},
+		{night(0, 0, 1, 0), "Nothing to do: the one run is sound.", "Sound means no objection, not an approval. "},
+		{night(0, 0, 0, 0), "No run in this sweep.", "Nothing is to be done. "},
+		{night(0, 0, 0, 2), "Two are unread.", "What could not be read has no result: see below."},
+		{night(13, 0, 1200, 0), "13 runs must be settled.", "1,200 of 1,213 runs carry no objection, which is not an approval. Begin with run 0123456789ab."},
+	} {
+		d, err := newDocument(c.night, Options{})
+		if err != nil {
+			t.Fatal(err)
+		}
+		if got, second, _ := d.headline(); got != c.want || second != c.second {
+			t.Errorf("headline %q, %q, want %q, %q", got, second, c.want, c.second)
+		}
+	}
+}
+
+// TestEmptyNight is one page that says so.
+func TestEmptyNight(t *testing.T) {
+	pages := texts(t, emptyNight(), Options{})
+	if len(pages) != 1 || !strings.Contains(strings.Join(pages[0], "\n"), "No run in this sweep.") {
+		t.Errorf("%q", pages)
+	}
+}
+
+// TestCautionsEverywhere: each page carries the caution, its number, what is
+// invented, and the pages of a run their identity.
+func TestCautionsEverywhere(t *testing.T) {
+	for name, c := range nights() {
+		if name == "large" {
+			continue
+		}
+		pages := texts(t, c.night, Options{Pages: c.pages})
+		for i, page := range pages {
+			all := "\n" + strings.Join(page, "\n") + "\n"
+			for _, want := range []string{report.Caution, fmt.Sprintf("page %d of %d", i+1, len(pages))} {
+				if !strings.Contains(all, "\n"+want+"\n") {
+					t.Errorf("%s, page %d lacks %q", name, i+1, want)
+				}
+			}
+			if c.night.Invented != strings.Contains(all, "\n"+report.InventedNote+"\n") {
+				t.Errorf("%s, page %d: the note on invented data is wrong", name, i+1)
+			}
+		}
+	}
+}
+
+// TestOneForm: volume, interval and indicated endpoint of a run stand on its
+// page in their one printed form, and nowhere in another. The figures are
+// those of the fixture, rounded by hand.
+func TestOneForm(t *testing.T) {
+	n := emptyNight()
+	n.Evaluations = []report.Evaluation{caustic()}
+	pages := texts(t, n, Options{})
+	all := strings.Join(pages[1], "\n")
+	for _, want := range []string{"9.175", "9.163 to 9.187", "9.20", "−0.025", "−0.27 % of refit; limit 0.046 mL"} {
+		if !strings.Contains(all, want) {
+			t.Errorf("no %q on the page", want)
+		}
+	}
+	for _, other := range regexp.MustCompile(`9\.1[678]\d*|9\.2\d*`).FindAllString(all, -1) {
+		switch other {
+		case "9.175", "9.163", "9.187", "9.20", "9.16", "9.17", "9.18", "9.19": // the last four are ticks
+		default:
+			t.Errorf("another form: %q", other)
+		}
+	}
+	if front := strings.Join(pages[0], "\n"); !strings.Contains(front, "−0.27") {
+		t.Error("the front page has another difference")
+	}
+}
+
+// TestABrokenRunSpoilsOnePage: a curve that is not a number is replaced by a
+// page with the run's facts; the others are as without it.
+func TestABrokenRunSpoilsOnePage(t *testing.T) {
+	for name, spoil := range map[string]func(*report.Evaluation){
+		"reading":   func(e *report.Evaluation) { e.Picture.Dots[3].Value = math.NaN() },
+		"volume":    func(e *report.Evaluation) { e.Picture.Dots[3].VolumeML = math.Inf(1) },
+		"curve":     func(e *report.Evaluation) { e.Picture.Curve[100].Y = math.NaN() },
+		"slope":     func(e *report.Evaluation) { e.Picture.Slope[100].Y = math.NaN() },
+		"residual":  func(e *report.Evaluation) { e.Picture.Residuals[3].Y = math.Inf(-1) },
+		"endpoint":  func(e *report.Evaluation) { e.Endpoints[0].VolumeML = math.NaN() },
+		"interval":  func(e *report.Evaluation) { e.Endpoints[0].High95ML = math.NaN() },
+		"indicated": func(e *report.Evaluation) { e.Indicated[0].VolumeML = math.NaN() },
+		"absurd":    func(e *report.Evaluation) { e.Endpoints[0].VolumeML = 1e300 },
+	} {
+		n := demoNight()
+		spoil(&n.Evaluations[0])
+		file, res := write(t, n, Options{})
+		if len(res.Failed) != 1 || !strings.Contains(res.Failed[0].What, "9f31c07a52de") || res.Failed[0].Says == "" {
+			t.Errorf("%s: failed pages %v", name, res.Failed)
+			continue
+		}
+		if bytes.Contains(file, []byte("NaN")) {
+			t.Errorf("%s: NaN in the file", name)
+		}
+	}
+}
+
+// TestPanicIsKept: a page that panics is named with the place.
+func TestPanicIsKept(t *testing.T) {
+	s := figure.NewSheet(210, 297)
+	says := attempt(s, func() { _ = (*document)(nil).n.Date })
+	if !strings.Contains(says, "nil pointer") || !strings.Contains(says, " at lastdrop/report/pdf.") {
+		t.Errorf("says %q", says)
+	}
+}
+
+// TestFailurePage tells the run's facts.
+func TestFailurePage(t *testing.T) {
+	d, err := newDocument(demoNight(), Options{})
+	if err != nil {
+		t.Fatal(err)
+	}
+	s := figure.NewSheet(d.width, d.height)
+	p := page{what: "run x of y", facts: runFacts(&d.n.Evaluations[0])}
+	if says := attempt(s, func() { d.drawFailure(s, 3, &p, strings.Repeat("because ", 200)) }); says != "" {
+		t.Fatal(says)
+	}
+	all := ""
+	for _, b := range s.Boxes {
+		all += b.Name + "\n"
+	}
+	for _, want := range []string{"This page could not be drawn.", "sample VIN-0417, spirit vinegar", "run 9f31c07a52de, verdict disputed", report.Caution} {
+		if !strings.Contains(all, want) {
+			t.Errorf("no %q in %s", want, all)
+		}
+	}
+}
+
+// TestVolumes: 450 large pages are three volumes; each names itself, and all
+// runs have their page in one of them.
+func TestVolumes(t *testing.T) {
+	n := emptyNight()
+	for range 450 {
+		e := overshot()
+		e.Picture = nil
+		n.Evaluations = append(n.Evaluations, e)
+	}
+	large := 0
+	for v := 1; v <= 3; v++ {
+		d, err := newDocument(n, Options{Volume: v})
+		if err != nil || d.volumes != 3 {
+			t.Fatal(err, d.volumes)
+		}
+		large += len(d.large)
+		if len(d.large) > VolumePages {
+			t.Errorf("volume %d has %d large pages", v, len(d.large))
+		}
+	}
+	if large != 450 {
+		t.Errorf("%d of 450 runs have a page", large)
+	}
+	var option *OptionError
+	if _, err := newDocument(n, Options{Volume: 4}); !errors.As(err, &option) {
+		t.Errorf("volume 4 of 3: %v", err)
+	}
+}
+
+// TestUnknownPages is refused before anything is written.
+func TestUnknownPages(t *testing.T) {
+	var b bytes.Buffer
+	var option *OptionError
+	if _, err := Write(&b, emptyNight(), Options{Pages: "some"}); !errors.As(err, &option) || b.Len() > 0 {
+		t.Errorf("%v, %d bytes", err, b.Len())
+	}
+}
+
+// TestReplacedSigns: what the fonts lack is shown as a sign and told.
+func TestReplacedSigns(t *testing.T) {
+	_, res := write(t, demoNight(), Options{})
+	if len(res.Replaced) == 0 || !strings.Contains(strings.Join(res.Replaced, "\n"), "\uFFFD") {
+		t.Errorf("replaced: %q", res.Replaced)
+	}
+	n := emptyNight()
+	n.Evaluations = []report.Evaluation{overshot()}
+	if _, res := write(t, n, Options{}); len(res.Replaced) > 0 {
+		t.Errorf("replaced without a reason: %q", res.Replaced)
+	}
+}
+
+// TestBytesAPage: no more than 12 kB a page and one set of fonts.
+func TestBytesAPage(t *testing.T) {
+	file, res := write(t, seedNight(), Options{})
+	if per := len(file) / res.Pages; per > 12_000 {
+		t.Errorf("%d bytes a page", per)
+	}
+}
