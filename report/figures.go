@@ -18,7 +18,8 @@ const Dash = "–"
 // VolumeDecimals returns how many decimals of a volume in mL its standard
 // uncertainty u (mL) supports, between 1 and 4: the place of the first figure
 // of u, or of the second where the first is a 1 or 2 and rounding to it alone
-// would change u by up to a half. Without a usable u it returns 3.
+// would change u by up to a half. A fourth decimal is shown for its first
+// figure only: burettes print three. Without a usable u it returns 3.
 //
 // Source: u is quoted to at most two figures and the value to the same place,
 // JCGM 100:2008, 7.2.6 (from memory); keeping the second only after a 1 or 2
@@ -28,7 +29,7 @@ func VolumeDecimals(u float64) int {
 		return 3
 	}
 	place := math.Ceil(-math.Log10(u))
-	if u*math.Pow(10, place) < 3 {
+	if u*math.Pow(10, place) < 3 && place < 3 {
 		place++
 	}
 	return min(max(int(place), 1), 4)

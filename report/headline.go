@@ -13,20 +13,33 @@ func (n *Night) Headline() (must, rest string) {
 }
 
 func (n *Night) mustDo() string {
-	disputed, doubtful := n.Count(VerdictDisputed), n.Count(VerdictDoubtful)
+	disputed, doubtful, unread := n.Count(VerdictDisputed), n.Count(VerdictDoubtful), len(n.Unread)
+	runs := len(n.Evaluations)
 	switch {
-	case disputed > 0 && doubtful > 0:
-		return Upper(Some(disputed, "run", "runs")) + " must be settled, " + Number(doubtful) + plural(doubtful, " needs", " need") + " a look."
-	case disputed > 0:
-		return Upper(Some(disputed, "run", "runs")) + " must be settled."
-	case doubtful > 0:
-		return Upper(Some(doubtful, "run", "runs")) + plural(doubtful, " needs", " need") + " a look; nothing must be settled."
-	case len(n.Evaluations) == 0 && len(n.Unread) > 0:
-		return "No run could be read."
-	case len(n.Evaluations) == 0:
+	case runs+unread == 0:
 		return "There was no run to read."
+	case runs == 0:
+		return "No run could be read, " + Number(unread) + plural(unread, " is", " are") + " unread."
+	case runs == 1 && disputed+doubtful+unread == 0:
+		return "Nothing to do: the one run is sound."
+	case disputed+doubtful+unread == 0:
+		return "Nothing to do: all " + Number(runs) + " runs are sound."
 	}
-	return "Nothing must be settled."
+	var said []string
+	if disputed > 0 {
+		said = append(said, Some(disputed, "run", "runs")+" must be settled")
+	}
+	if doubtful > 0 {
+		who := Number(doubtful)
+		if disputed == 0 {
+			who = Some(doubtful, "run", "runs")
+		}
+		said = append(said, who+plural(doubtful, " needs", " need")+" a look")
+	}
+	if unread > 0 {
+		said = append(said, Number(unread)+plural(unread, " is", " are")+" unread")
+	}
+	return Upper(strings.Join(said, ", ")) + "."
 }
 
 func (n *Night) howTheRestStands() string {
@@ -34,8 +47,11 @@ func (n *Night) howTheRestStands() string {
 	if runs := len(n.Evaluations); runs > 0 {
 		said = append(said, objections(n.Count(VerdictSound), runs))
 	}
-	if u := len(n.Unread); u > 0 {
-		said = append(said, Upper(Some(u, "dump or run", "dumps or runs"))+" could not be read and "+plural(u, "has", "have")+" no result.")
+	switch {
+	case len(n.Unread) > 0:
+		said = append(said, "What is unread has no result.")
+	case len(n.Evaluations) == 0:
+		said = append(said, "Nothing is to be done.")
 	}
 	return strings.Join(said, " ")
 }

@@ -56,14 +56,15 @@ func TestHeadline(t *testing.T) {
 		n          *Night
 		must, rest string
 	}{
-		{night(4, 6, 50, 3), "Four runs must be settled, six need a look.", "50 of 60 runs carry no objection, which is not an approval. Three dumps or runs could not be read and have no result."},
-		{night(1, 1, 1, 1), "One run must be settled, one needs a look.", "One of three runs carries no objection, which is not an approval. One dump or run could not be read and has no result."},
+		{night(4, 6, 50, 3), "Four runs must be settled, six need a look, three are unread.", "50 of 60 runs carry no objection, which is not an approval. What is unread has no result."},
+		{night(1, 1, 1, 1), "One run must be settled, one needs a look, one is unread.", "One of three runs carries no objection, which is not an approval. What is unread has no result."},
 		{night(13, 0, 0, 0), "13 runs must be settled.", "No run is without objection."},
-		{night(0, 1, 1, 0), "One run needs a look; nothing must be settled.", "One of two runs carries no objection, which is not an approval."},
-		{night(0, 0, 12, 0), "Nothing must be settled.", "All twelve runs carry no objection, which is not an approval."},
-		{night(0, 0, 1, 0), "Nothing must be settled.", "The run carries no objection, which is not an approval."},
-		{night(0, 0, 0, 2), "No run could be read.", "Two dumps or runs could not be read and have no result."},
-		{night(0, 0, 0, 0), "There was no run to read.", ""},
+		{night(0, 1, 1, 0), "One run needs a look.", "One of two runs carries no objection, which is not an approval."},
+		{night(0, 0, 12, 0), "Nothing to do: all twelve runs are sound.", "All twelve runs carry no objection, which is not an approval."},
+		{night(0, 0, 1, 0), "Nothing to do: the one run is sound.", "The run carries no objection, which is not an approval."},
+		{night(0, 0, 1, 1), "One is unread.", "The run carries no objection, which is not an approval. What is unread has no result."},
+		{night(0, 0, 0, 2), "No run could be read, two are unread.", "What is unread has no result."},
+		{night(0, 0, 0, 0), "There was no run to read.", "Nothing is to be done."},
 	} {
 		if must, rest := c.n.Headline(); must != c.must || rest != c.rest {
 			t.Errorf("got %q, %q\nwant %q, %q", must, rest, c.must, c.rest)

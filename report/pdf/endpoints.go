@@ -75,8 +75,8 @@ func (r endpointRow) draw(s *figure.Sheet, e *report.Evaluation, k int, y float6
 	} else {
 		r.figure(s, endpointX[1]+shape, y, figure.Black, report.Dash, "", "")
 	}
-	if x := p.Differs; x != nil {
-		r.figure(s, endpointX[2], y, figure.Black, apartML(p), report.Signed(x.Percent, 2)+" %", "limit "+amount(x.LimitML, "mL"))
+	if p.Differs != nil {
+		r.figure(s, endpointX[2], y, figure.Black, p.Difference(), p.DifferencePercent()+" %", "limit "+p.DifferenceLimit())
 	} else {
 		r.figure(s, endpointX[2], y, figure.Black, report.Dash, "", "")
 	}

@@ -24,7 +24,6 @@ func (d *document) planFront() {
 	if at >= 0 {
 		d.unreadPage = at + 1
 	}
-	f.addSection(air, d.waitingSection())
 	for i, items := range f.pages {
 		p := page{what: "front page"}
 		if i == 0 {
@@ -48,85 +47,24 @@ func (d *document) drawVolumeFront(s *figure.Sheet, number int) {
 	s.Text(left, 35, leadStyle, "The headline, the list and the counts of the night stand in volume 1.")
 }
 
-// headline returns what happened and what to do.
+// headline returns what happened, what to do and the next command.
 func (d *document) headline() (happened, do, next string) {
-	n := d.n
-	runs, unread := len(n.Evaluations), len(n.Unread)
-	settle, doubt := n.Count(report.VerdictDisputed), n.Count(report.VerdictDoubtful)
-	sound := n.Count(report.VerdictSound)
-	switch {
-	case runs == 0 && unread == 0:
-		return "No run in this sweep.", "Nothing is to be done. " + d.besides(), ""
-	case settle+doubt+unread == 0:
-		return "Nothing to do: " + allSound(runs), "Sound means " + report.SoundMeans + ". " + d.besides(), ""
-	}
-	var parts []string
-	if settle > 0 {
-		parts = append(parts, plural(counted(settle), settle, "run")+" must be settled")
-	}
-	if doubt > 0 {
-		parts = append(parts, named(doubt, len(parts) == 0)+needs(doubt)+" a look")
-	}
-	if unread > 0 {
-		parts = append(parts, counted(unread)+are(unread)+" unread")
-	}
-	happened = capital(strings.Join(parts, ", ")) + "."
-	if runs > 0 {
-		do = whole(sound) + " of " + plural(whole(runs), runs, "run") + " carry no objection, which is not an approval. "
-		if sound == 1 {
-			do = strings.Replace(do, "carry", "carries", 1)
-		}
-	}
-	do += d.besides()
+	happened, do = d.n.Headline()
+	do = strings.TrimSpace(do + " " + d.besides())
 	if len(d.large) == 0 {
-		return happened, do + "What could not be read has no result: see below.", ""
+		return happened, do, ""
 	}
-	first := &n.Evaluations[d.large[0]]
-	return happened, do + "Begin with " + name(first) + ".", lookAt(first)
+	first := &d.n.Evaluations[d.large[0]]
+	return happened, do + " Begin with " + name(first) + ".", lookAt(first)
 }
 
-// besides tells what else a reader must know of the night.
+// besides tells what else a reader must know of the night. Dumps that wait are
+// not told here: they change with the clock, and published pages do not.
 func (d *document) besides() string {
-	out := ""
-	if w := len(d.n.Waiting); w > 0 {
-		out += capital(plural(counted(w), w, "dump")) + " waits for the next sweep. "
-		if w > 1 {
-			out = strings.Replace(out, "waits", "wait", 1)
-		}
-	}
 	if d.n.Estimator != "" {
-		out += "The estimator " + d.n.Estimator + " was asked for by name. "
+		return "The estimator " + d.n.Estimator + " was asked for by name."
 	}
-	return out
-}
-
-func allSound(runs int) string {
-	if runs == 1 {
-		return "the one run is sound."
-	}
-	return "all " + plural(counted(runs), runs, "run") + " are sound."
-}
-
-// named is a count that names runs where no count before it did.
-func named(n int, first bool) string {
-	if first {
-		return plural(counted(n), n, "run")
-	}
-	return counted(n)
-}
-
-func needs(n int) string {
-	if n == 1 {
-		return " needs"
-	}
-	return " need"
-}
-
-func are(n int) string {
-	if n == 1 {
-		return " is"
-	}
-	return " are"
+	return ""
 }
 
 // lookAt is the command that shows the run's dump, "" for a run without one.

@@ -244,22 +244,3 @@ func sentence(s string) string {
 	}
 	return capital(s)
 }
-
-// waitingSection lists the dumps that the next sweep will take.
-func (d *document) waitingSection() section {
-	sec := section{head: item{height: 6, draw: func(s *figure.Sheet, y float64) {
-		blockTitle(s, left, right, y, "Waiting", "for the next sweep; these have no result yet")
-	}}}
-	for i := range d.n.Waiting {
-		w := &d.n.Waiting[i]
-		where := figure.WrapAtMost(monoNote, w.Dump, unreadX-sampleX-3, 3)
-		why := figure.WrapAtMost(bodyStyle, sentence(w.Says), right-unreadX, 3)
-		h := 2.1 + max(noteLead*float64(len(where)), bodyLead*float64(len(why)))
-		sec.rows = append(sec.rows, item{height: h, draw: func(s *figure.Sheet, y float64) {
-			paragraph(s, sampleX, y+3.5, noteLead, monoNote.In(figure.Black), where)
-			paragraph(s, unreadX, y+3.5, bodyLead, bodyStyle, why)
-			s.Rule(rowRule, left, right, y+h)
-		}})
-	}
-	return sec
-}

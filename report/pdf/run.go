@@ -234,7 +234,7 @@ func bigFigures(e *report.Evaluation) [4]bigFigure {
 	}
 	if p != nil && p.Differs != nil {
 		apart.label += ", " + p.Differs.Kind
-		apart.value, apart.note = apartML(p), apartNote(p.Differs)
+		apart.value, apart.note = p.Difference(), apartNote(p)
 	}
 	return [4]bigFigure{refit, indicated, apart, doubtFigure(e)}
 }
@@ -249,14 +249,8 @@ func intervalNote(p *report.Endpoint, width float64) string {
 	return note
 }
 
-// apartML is the printed form of refit − indicated: with the decimals of the
-// refit.
-func apartML(p *report.Endpoint) string {
-	return report.Signed(p.Differs.ML, report.VolumeDecimals(p.UML))
-}
-
-func apartNote(x *report.Difference) string {
-	return report.Signed(x.Percent, 2) + " % of refit; limit " + amount(x.LimitML, "mL") + " mL"
+func apartNote(p *report.Endpoint) string {
+	return p.DifferencePercent() + " % of refit; limit " + p.DifferenceLimit() + " mL"
 }
 
 // indicatedOf returns the indicated endpoint that belongs to the k-th refitted

@@ -300,7 +300,7 @@ func drawEstimate(s *figure.Sheet, p *report.Endpoint, t *report.Estimate, y flo
 	room := tableVolume - tableKind - figure.TextWidth(st, volume) - 1.5
 	s.Text(tableKind, y, noteStyle, figure.Shorten(noteStyle, t.Kind, room))
 	s.TextRight(tableVolume, y, st, volume)
-	s.TextRight(right, y, noteStyle, report.Fixed(t.UFitML, min(report.VolumeDecimals(t.UFitML)+1, 5)))
+	s.TextRight(right, y, noteStyle, report.Fixed(t.UFitML, report.UDecimals(t.UFitML)))
 }
 
 // scaleRow is one row of the estimates on one scale.
