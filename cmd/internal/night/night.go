@@ -1,0 +1,127 @@
+// Package night is the sweep: folders of dumps become one published night.
+// Its stages stand in a file each, in the order of Sweep:
+//
+//	folders.go   which folders, under which names, and where OUT may lie
+//	discover.go  which files are dumps
+//	evaluate.go  dump by dump: wait, read (read.go), refit, identify (identity.go)
+//	join.go      the same run under two names; exported.go and twins.go say where such runs differ
+//	assemble.go  order, verdicts, the night
+//	publish/     every file or none
+//
+// It computes no endpoint (package refit does) and lays nothing out (package
+// report does). A dump is opened for reading and nothing else. No clock is
+// read but through Options.Now, and nothing published depends on it.
+package night
+
+import (
+	"context"
+	"io"
+	"log/slog"
+	"path/filepath"
+	"sort"
+	"strings"
+	"time"
+
+	"lastdrop/cmd/internal/night/publish"
+	"lastdrop/report"
+)
+
+// Refit turns the bytes of one dump into evaluations; see package refit. It
+// is called from several goroutines at once.
+type Refit func(data []byte, name, sha string) ([]report.Evaluation, []report.Unread)
+
+// Output is one published file and how it is laid out.
+type Output struct {
+	Name  string
+	Write func(io.Writer, *report.Night) error
+}
+
+// Options are all that a sweep depends on.
+type Options struct {
+	Folders    []string         // as the user named them, at least one
+	Into       string           // OUT; made when missing
+	MinAge     time.Duration    // younger dumps wait; 0 takes every dump
+	Now        func() time.Time // for the age of dumps only
+	Date       string           // of the publication, 2031-04-03
+	Workers    int              // dumps refitted at once; 0 for as many as there are processors
+	Laboratory string
+	Estimator  string // what was asked for by name, for the pages that print it
+	Lastdrop   string // program version
+	Limits     []report.Limit
+	Refit      Refit
+	Outputs    []Output     // in the order in which they are put in place: those that a person may hold open first
+	Log        *slog.Logger // warnings
+}
+
+// Result is a published night.
+type Result struct {
+	Night *report.Night
+	Dumps int      // dumps found: read, unread and waiting
+	Files []string // what was published, each with OUT before it, in byte order
+
+	folders map[string]string // path of each swept folder, by its name
+}
+
+// Path returns where a dump of the night lies, as the user named its folder.
+// It belongs into messages and never into a published file.
+func (r *Result) Path(dump string) string {
+	name, below, _ := strings.Cut(dump, "/")
+	return filepath.Join(r.folders[name], filepath.FromSlash(below))
+}
+
+// Sweep reads every dump of the folders and publishes one night into OUT.
+// When it returns an error OUT is as it was. The error is an *Error, or the
+// context's cause when that ended the sweep.
+func Sweep(ctx context.Context, o Options) (*Result, error) {
+	folders, err := openFolders(o.Folders, o.Into)
+	if err != nil {
+		return nil, err
+	}
+	defer closeFolders(folders)
+	place, err := claim(o)
+	if err != nil {
+		return nil, err
+	}
+	defer place.Close() // what it cannot clean, the next Open does
+
+	found, err := discover(ctx, folders)
+	if err != nil {
+		return nil, err
+	}
+	found.warn(o.Log)
+	if len(found.dumps) == 0 {
+		return nil, found.nothing()
+	}
+	outcomes, err := evaluate(ctx, found.dumps, o)
+	if err != nil {
+		return nil, err
+	}
+	n := assemble(join(outcomes), outcomes, found.others, o)
+	result := &Result{Night: n, Dumps: len(found.dumps), folders: map[string]string{}}
+	for _, f := range folders {
+		result.folders[f.name] = f.path
+	}
+	if err := put(ctx, place, result, o); err != nil {
+		return nil, err
+	}
+	return result, nil
+}
+
+// put publishes the night. After its last look at the context the files
+// change place in one go.
+func put(ctx context.Context, place *publish.Place, r *Result, o Options) error {
+	files := make([]publish.File, len(o.Outputs))
+	for i, out := range o.Outputs {
+		files[i] = publish.File{Name: out.Name, Write: func(w io.Writer) error { return out.Write(w, r.Night) }}
+		r.Files = append(r.Files, filepath.Join(o.Into, out.Name))
+	}
+	sort.Strings(r.Files)
+	if err := place.Publish(ctx, files); err != nil {
+		if ctx.Err() != nil {
+			return context.Cause(ctx)
+		}
+		return &Error{Kind: Unfinished, Msg: "nothing was published into " + o.Into, Err: err,
+			Try: "make room, close files of " + o.Into + " that are open elsewhere, then sweep again"}
+	}
+	return nil
+}

@@ -1,0 +1,55 @@
+// Command lastdrop refits the endpoints of titrations, night by night. This
+// package holds arguments and exit codes only, one file per command; the work
+// is done by cmd/internal.
+//
+//	sweep.go   the night: folders of dumps become one published night
+//	look.go    one dump on the terminal
+//	demo.go    the demonstration laboratory
+//	exit.go    the exit codes, all of them
+//
+// stdout carries data and nothing else; all the rest goes to stderr as
+// "lastdrop: …", "lastdrop: warning: …" and "lastdrop: try: …".
+package main
+
+import (
+	"context"
+	"io"
+	"os"
+	"time"
+
+	"golang.org/x/term"
+)
+
+// version of the program; every record and report carries it.
+const version = "0.1.0"
+
+func main() {
+	os.Exit(run(untilSignal(context.Background()), os.Args[1:], os.Stdin, os.Stdout, os.Stderr))
+}
+
+// run does what the arguments say and returns the exit code. Nothing else in
+// the program exits.
+func run(ctx context.Context, args []string, stdin io.Reader, stdout, stderr io.Writer) int {
+	p := &program{stdin: stdin, stdout: stdout, stderr: stderr, now: time.Now, getenv: os.Getenv}
+	return p.run(ctx, args)
+}
+
+// program is what a run has of the world.
+type program struct {
+	stdin          io.Reader
+	stdout, stderr io.Writer
+	now            func() time.Time
+	getenv         func(string) string
+}
+
+func (p *program) run(ctx context.Context, args []string) int {
+	err := p.execute(ctx, args)
+	p.tell(err)
+	return exitCode(err)
+}
+
+// colours is true when stdout is a terminal that may be given colours.
+func (p *program) colours() bool {
+	f, ok := p.stdout.(*os.File)
+	return ok && term.IsTerminal(int(f.Fd())) && p.getenv("NO_COLOR") == "" && p.getenv("TERM") != "dumb"
+}
