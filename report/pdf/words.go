@@ -20,23 +20,6 @@ func whole(n int) string {
 	return s
 }
 
-// counted is a count as a word up to twelve.
-func counted(n int) string {
-	words := [...]string{"no", "one", "two", "three", "four", "five", "six", "seven", "eight", "nine", "ten", "eleven", "twelve"}
-	if n >= 0 && n < len(words) {
-		return words[n]
-	}
-	return whole(n)
-}
-
-// plural is "3 runs", "1 run".
-func plural(count string, n int, noun string) string {
-	if n == 1 {
-		return count + " " + noun
-	}
-	return count + " " + noun + "s"
-}
-
 // capital makes the first letter a capital.
 func capital(s string) string {
 	r, size := utf8.DecodeRuneInString(s)
