@@ -79,8 +79,8 @@ func potentiometric(c *Curve, k *cleaned, name string, l Limits) (*Result, error
 	raw := *k
 	stepU := c.StepY / k.decade
 	k.noise = readingNoise(k.v, k.u, stepU, leastNoise, mostNoise)
+	k.stuckReadings(stepU, l) // first: what follows a stuck stretch leaps back like a stray
 	k.strays(stepU, l)
-	k.stuckReadings(stepU, l)
 	r := &Result{Estimator: name, Noise: k.noise * k.decade, LeftOut: k.leftOut, Used: k.at}
 	d, err := newDerivative(k, l)
 	if err != nil {
@@ -166,8 +166,8 @@ func conductometric(c *Curve, k *cleaned, name string, l Limits) *Result {
 	y := corrected(k.v, k.u, c.V0)
 	raw := *k
 	k.noise, k.relative = newConduct(k.v, y, c.StepY).relSD, true
-	k.strays(c.StepY, l)
 	k.stuckReadings(c.StepY, l)
+	k.strays(c.StepY, l)
 	y = corrected(k.v, k.u, c.V0)
 	w := newConduct(k.v, y, c.StepY)
 	es, arms, gain := w.breaks(k, c.V0)
