@@ -27,7 +27,7 @@ type Endpoint struct {
 const student95 = 1.959963984540054
 
 // uniform95 is the half-width of the 95 % interval of a value that lies
-// anywhere in a bracket with equal probability, as a share of the bracket.
+// anywhere in a bracket with equal chance, as a share of the bracket.
 const uniform95 = 0.475
 
 // bracketOf returns i with v_i <= x < v_i+1, taken to the outer increments.

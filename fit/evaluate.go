@@ -19,6 +19,7 @@ type Result struct {
 	Corrected []float64     // of Used: conductivity corrected for dilution; nil else
 	Arms      []Arm         // nil but for conductivity
 	Unsure    []Estimate    // jumps that stand out but are known too badly to be endpoints
+	Passes    []float64     // mL: other places at which the readings pass the end reading
 	Compared  []Compared    // each indicated endpoint with its nearest refit of like kind
 }
 
@@ -78,7 +79,7 @@ func choose(c *Curve, estimator string) (string, error) {
 func potentiometric(c *Curve, k *cleaned, name string, l Limits) (*Result, error) {
 	raw := *k
 	stepU := c.StepY / k.decade
-	k.noise = readingNoise(k.v, k.u, stepU, leastNoise, mostNoise)
+	noisy := k.setNoise(stepU)
 	k.stuckReadings(stepU, l) // first: what follows a stuck stretch leaps back like a stray
 	k.strays(stepU, l)
 	r := &Result{Estimator: name, Noise: k.noise * k.decade, LeftOut: k.leftOut, Used: k.at}
@@ -94,7 +95,7 @@ func potentiometric(c *Curve, k *cleaned, name string, l Limits) (*Result, error
 	r.Residuals = d.inv.residuals(k)
 	var fixed []Estimate
 	if c.EndReading != nil {
-		fixed = fixedReading(c, k)
+		fixed = r.fixedReading(c, k, l)
 	}
 	if name == AtReadingName {
 		r.Endpoints = answers(fixed, inflections)
@@ -102,21 +103,32 @@ func potentiometric(c *Curve, k *cleaned, name string, l Limits) (*Result, error
 		r.Endpoints = answers(inflections, fixed)
 	}
 	judge(c, k, r, l, d.endsInJump())
+	if noisy {
+		r.flag(Flag{Name: "noisy", Weight: Doubtful, Figure: r.Noise, Limit: mostNoise * k.decade, Unit: unitOf(c.Signal)})
+	}
 	r.judgeLeftOut(c, &raw, name, l)
 	sortFlags(r.Flags)
 	return r, nil
 }
 
-// fixedReading runs at-reading on the oriented curve in decades.
-func fixedReading(c *Curve, k *cleaned) []Estimate {
+// fixedReading runs at-reading on the oriented curve in decades. A volume that
+// is known too badly is no endpoint; passes beside the one taken are kept for
+// a flag.
+func (r *Result) fixedReading(c *Curve, k *cleaned, l Limits) []Estimate {
 	shape, err := spline.NewShape(k.v, k.u)
 	if err != nil {
 		return nil
 	}
-	if e, ok := atReading(k, shape, *c.EndReading); ok {
-		return []Estimate{e}
+	e, others, ok := atReading(k, shape, *c.EndReading)
+	if !ok {
+		return nil
 	}
-	return nil
+	r.Passes = others
+	if !e.Leap && student95*e.U > l.HalfWidthMost/100*e.V {
+		r.Unsure = append(r.Unsure, e)
+		return nil
+	}
+	return []Estimate{e}
 }
 
 func (k *cleaned) readings() []float64 {

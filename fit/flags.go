@@ -35,6 +35,7 @@ type Compared struct {
 	Refit     Estimate // of the indicated one's kind
 	Limit     float64  // mL
 	Disagrees bool
+	Lone      bool // the refit has a nearer indicated endpoint: this one has no counterpart
 }
 
 // Overshoot is what the overshoot rule saw.
@@ -45,11 +46,11 @@ type Overshoot struct {
 
 // judge sets the flags of an evaluation from its endpoints.
 func judge(c *Curve, k *cleaned, r *Result, l Limits, endsInJump bool) {
-	r.compare(c, l)
+	r.compare(c, k, l)
 	for i := range r.Endpoints {
 		e := &r.Endpoints[i]
 		n := i + 1
-		limit := l.Agreement(e.V)
+		limit := l.agreement(e.V, k.burette)
 		k.overshoot(r, e, n, l)
 		if e.Kind == Break {
 			r.wideInterval(e, n, limit)
@@ -59,6 +60,9 @@ func judge(c *Curve, k *cleaned, r *Result, l Limits, endsInJump bool) {
 		if e.Moves > limit/3 {
 			r.poorFit(e, n, limit)
 		}
+	}
+	if n := len(r.Passes); n > 0 && r.Estimator == AtReadingName && len(r.Endpoints) > 0 {
+		r.flag(Flag{Name: "passes-again", Weight: Disputed, Endpoint: 1, Figure: float64(n + 1), Limit: 1, Unit: "passes", About: r.Passes})
 	}
 	if c.Signal == Conductivity && c.V0 <= 0 {
 		r.flag(Flag{Name: "dilution-unknown", Weight: Doubtful, Unit: "mL"})
@@ -116,27 +120,55 @@ func (r *Result) missing(c *Curve, k *cleaned, endsInJump bool, l Limits) {
 // and flags those that disagree. An inflection disagrees if it lies outside
 // the bracket that holds the refit's, one display step allowed, and further
 // from it than the limit; other kinds if they differ by more than the limit
-// and 3 u of the difference, u^2 + step^2/12.
-func (r *Result) compare(c *Curve, l Limits) {
+// and 3 u of the difference, u^2 + step^2/12. The step is never taken as more
+// than the limit: an export that drops trailing zeros writes 51 for 51.000.
+// An indicated endpoint beside whose refit another one lies nearer has no
+// counterpart and disagrees. One without a refit of its kind is told.
+func (r *Result) compare(c *Curve, k *cleaned, l Limits) {
 	for _, ind := range c.Indicated {
 		p, ok := r.like(ind)
 		if !ok {
+			r.notCompared(c, ind)
 			continue
 		}
+		p.Lone = nearer(c.Indicated, ind, p.Refit.V)
 		d := math.Abs(p.Refit.V - ind.V)
-		p.Limit = l.Agreement(p.Refit.V)
+		p.Limit = l.agreement(p.Refit.V, k.burette)
+		step := math.Min(ind.StepV, p.Limit)
 		if ind.Kind == Inflection {
-			low, high := c.V[p.Refit.Bracket[0]]-ind.StepV, c.V[p.Refit.Bracket[1]]+ind.StepV
+			low, high := c.V[p.Refit.Bracket[0]]-step, c.V[p.Refit.Bracket[1]]+step
 			p.Disagrees = (ind.V < low || ind.V > high) && d > p.Limit
 		} else {
-			p.Limit = math.Max(p.Limit, 3*math.Sqrt(sq(p.Refit.U)+sq(ind.StepV)/12))
+			p.Limit = math.Max(p.Limit, 3*math.Sqrt(sq(p.Refit.U)+sq(step)/12))
 			p.Disagrees = d > p.Limit
 		}
+		p.Disagrees = p.Disagrees || p.Lone
 		r.Compared = append(r.Compared, p)
 		if p.Disagrees {
 			r.flag(Flag{Name: "disagrees", Weight: Disputed, Endpoint: p.Endpoint, Figure: d, Limit: p.Limit, Unit: "mL", About: p})
 		}
 	}
+}
+
+// nearer tells whether another indicated endpoint of the kind lies nearer to v.
+func nearer(all []Indicated, ind Indicated, v float64) bool {
+	for _, o := range all {
+		if o.Kind == ind.Kind && math.Abs(o.V-v) < math.Abs(ind.V-v) {
+			return true
+		}
+	}
+	return false
+}
+
+// notCompared tells of an indicated endpoint of a kind that no estimate of an
+// existing endpoint has: a note, or doubtful where the kind cannot be one of
+// this signal.
+func (r *Result) notCompared(c *Curve, ind Indicated) {
+	if len(r.Endpoints) == 0 {
+		return // no-endpoint or stops-short tells it
+	}
+	impossible := (ind.Kind == Break) != (c.Signal == Conductivity)
+	r.flag(Flag{Name: "not-compared", Weight: heavierNote(impossible), Figure: ind.V, Unit: "mL", About: ind})
 }
 
 // like finds the estimate of the indicated endpoint's kind that lies nearest.
@@ -198,16 +230,29 @@ func (k *cleaned) dose(i int, v float64) (o Overshoot, ok bool) {
 	return o, true
 }
 
-// wideBracket flags answers that know nothing but their bracket.
+// Bracket is what the wide-bracket rule saw.
+type Bracket struct {
+	Width float64 // mL
+	Half  float64 // 95 % half-width to the longer side, mL
+	Leap  bool    // no reading tells where in the bracket the endpoint lies
+}
+
+// wideBracket flags answers of derivative and at-reading whose bracket is
+// wide. Where only their interval exceeds the agreement limit that is told:
+// no doubt by itself, but nobody should find out later.
 func (k *cleaned) wideBracket(r *Result, e *Endpoint, n int, l Limits) {
-	h := k.volumeAt(e.Bracket[1]) - k.volumeAt(e.Bracket[0])
-	percent := 100 * h / e.V
-	if percent <= l.WideBracketDoubtfulPercent || h <= l.AgreementFloorML {
-		return
-	}
-	f := Flag{Name: "wide-bracket", Weight: Doubtful, Endpoint: n, Figure: percent, Limit: l.WideBracketDoubtfulPercent, Unit: "%", At: e.Bracket[:], About: h}
-	if percent > l.WideBracketDisputedPercent {
+	about := Bracket{Width: k.volumeAt(e.Bracket[1]) - k.volumeAt(e.Bracket[0]), Half: math.Max(e.High-e.V, e.V-e.Low), Leap: e.Leap}
+	floor := l.AgreementFloorU * k.burette
+	percent := 100 * about.Width / e.V
+	f := Flag{Name: "wide-bracket", Weight: Doubtful, Endpoint: n, Figure: percent, Limit: l.WideBracketDoubtfulPercent, Unit: "%", At: e.Bracket[:], About: about}
+	switch {
+	case percent > l.WideBracketDisputedPercent && about.Width > floor:
 		f.Weight, f.Limit = Disputed, l.WideBracketDisputedPercent
+	case percent > l.WideBracketDoubtfulPercent && about.Width > floor:
+	case about.Half > l.agreement(e.V, k.burette):
+		f.Name, f.Weight, f.Figure, f.Limit, f.Unit = "wide-interval", Note, about.Half, l.agreement(e.V, k.burette), "mL"
+	default:
+		return
 	}
 	r.flag(f)
 }

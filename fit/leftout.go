@@ -36,11 +36,30 @@ func (r *Result) judgeLeftOut(c *Curve, raw *cleaned, name string, l Limits) {
 			f.Weight = heavierNote(m.Count > 2)
 		} else {
 			m.By = r.movedBy(c, raw, name, l)
-			f.Weight = heavierNote(r.matters(m.By, l))
+			f.Weight = heavierNote(r.matters(m.By, raw, l))
+			if m.First.ToEnd {
+				f.Weight = heavier(r.endsNear(c.V[at[0]]))
+			}
 		}
 		f.About = m
 		r.flag(f)
 	}
+}
+
+// nearEnd is how far beyond an endpoint, as a share of it, usable readings must
+// go before they may stand still: the flank behind it is half of what defends
+// it.
+const nearEnd = 0.1
+
+// endsNear tells whether the readings stand still from v mL on, too near to an
+// endpoint.
+func (r *Result) endsNear(v float64) bool {
+	for _, e := range r.Endpoints {
+		if v < e.V*(1+nearEnd) {
+			return true
+		}
+	}
+	return false
 }
 
 func heavierNote(doubtful bool) Weight {
@@ -62,11 +81,11 @@ func unitOf(s Signal) string {
 
 // matters tells whether a movement exceeds a third of the agreement limit of
 // the first endpoint; an endpoint that comes or goes matters.
-func (r *Result) matters(by float64, l Limits) bool {
+func (r *Result) matters(by float64, raw *cleaned, l Limits) bool {
 	if len(r.Endpoints) == 0 {
 		return false
 	}
-	return !(by <= l.Agreement(r.Endpoints[0].V)/3)
+	return !(by <= l.agreement(r.Endpoints[0].V, raw.burette)/3)
 }
 
 // movedBy returns the largest distance from an endpoint to the nearest one
@@ -81,7 +100,7 @@ func (r *Result) movedBy(c *Curve, raw *cleaned, name string, l Limits) float64 
 		if d, err := newDerivative(raw, l); err == nil && name == Derivative {
 			with, _ = d.estimates()
 		} else if c.EndReading != nil {
-			with = fixedReading(c, raw)
+			with = new(Result).fixedReading(c, raw, l)
 		}
 	}
 	worst := 0.0

@@ -4,7 +4,7 @@ package fit
 // its reason in the comment; percentages are of the endpoint's volume.
 type Limits struct {
 	AgreementPercent float64 // can the endpoint be defended within this?
-	AgreementFloorML float64 // and never less than 8 burette u
+	AgreementFloorU  float64 // and never less than so many burette u
 
 	WideBracketDoubtfulPercent float64 // derivative and at-reading only
 	WideBracketDisputedPercent float64
@@ -25,6 +25,8 @@ type Limits struct {
 	StuckNoise     float64 // noise sd that it moves
 	StrayFalseRate float64 // of clean runs may lose a reading as stray
 
+	MostNoise float64 // decades; what an electrode in order does not exceed
+
 	BuretteUML float64 // burette u, mL; never more than a tenth of the median increment
 }
 
@@ -33,17 +35,22 @@ type Limits struct {
 // common practice, no source.
 func Defaults() Limits {
 	return Limits{
-		AgreementPercent: 0.5, AgreementFloorML: 0.010,
+		AgreementPercent: 0.5, AgreementFloorU: 8,
 		WideBracketDoubtfulPercent: 3, WideBracketDisputedPercent: 10,
 		OvershootTimes: 1.4, OvershootDecades: 0.5, OvershootPercent: 8,
 		Contrast: 2, RiseDecades: 0.25, SideDecades: 0.35, PastPercent: 0.5, HalfWidthMost: 3,
 		BreakGain: 3, BreakGainTotal: 10,
 		StuckSteps: 3, StuckNoise: 5, StrayFalseRate: 0.005,
+		MostNoise:  mostNoise,
 		BuretteUML: 0.0012,
 	}
 }
 
-// Agreement returns the agreement limit in mL for an endpoint at v mL.
-func (l Limits) Agreement(v float64) float64 {
-	return max(l.AgreementPercent/100*v, l.AgreementFloorML)
+// Agreement returns the agreement limit in mL for an endpoint at v mL with the
+// usual burette.
+func (l Limits) Agreement(v float64) float64 { return l.agreement(v, l.BuretteUML) }
+
+// agreement is the same for a burette uncertainty of uv mL.
+func (l Limits) agreement(v, uv float64) float64 {
+	return max(l.AgreementPercent/100*v, l.AgreementFloorU*uv)
 }

@@ -42,7 +42,7 @@ func scatter(v, u []float64, points int) float64 {
 		r[i] = math.Abs(sum) / math.Sqrt(norm)
 		slope[i] = math.Abs((u[i+points-1] - u[i]) / (v[i+points-1] - v[i]))
 	}
-	flat := lowest(slope, 2) * (1 + 1e-9) // equal slopes stay equal when units change
+	flat := median(slope) * (1 + 1e-9) // equal slopes stay equal when units change
 	var q []float64
 	for i := range r {
 		if slope[i] <= flat {
@@ -83,9 +83,31 @@ const (
 	mostNoise  = 0.03
 )
 
-// lowest returns the value below which a part-th of a lies.
-func lowest(a []float64, part int) float64 {
-	b := append([]float64(nil), a...)
-	sort.Float64s(b)
-	return b[(len(b)-1)/part]
+// manyBack is the share of increments, and leastBack their number, from which
+// readings that run backwards by more than three times the noise of a
+// difference show that the noise is larger than the bound: a coarse curve
+// bends, which looks like noise, but it does not run backwards.
+const (
+	manyBack  = 0.02
+	leastBack = 2
+)
+
+// setNoise sets the noise of a pH or potential curve. noisy tells that it is
+// above the bound and the readings prove it.
+func (k *cleaned) setNoise(stepU float64) (noisy bool) {
+	k.noise = readingNoise(k.v, k.u, stepU, leastNoise, mostNoise)
+	if k.noise < mostNoise {
+		return false
+	}
+	back := 0
+	for i := 0; i+1 < len(k.u); i++ {
+		if k.u[i]-k.u[i+1] > 3*math.Sqrt2*mostNoise {
+			back++
+		}
+	}
+	if back < leastBack || float64(back) < manyBack*float64(len(k.u)) {
+		return false
+	}
+	k.noise = readingNoise(k.v, k.u, stepU, leastNoise, math.Inf(1))
+	return true
 }

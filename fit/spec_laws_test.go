@@ -94,7 +94,7 @@ func TestAnswerScalesWithTheUnitOfVolume(t *testing.T) {
 		want := evaluate(t, c, "")
 		for _, k := range []float64{0.125, 10} {
 			l := fit.Defaults()
-			l.AgreementFloorML, l.BuretteUML = l.AgreementFloorML*k, l.BuretteUML*k
+			l.BuretteUML *= k
 			got := evaluateWith(t, transformed(c, k, 0, 1, 0), "", l)
 			follows(t, fmt.Sprintf("%s, V x %g", what, k), got, want, k, 0)
 			if len(got.Flags) != len(want.Flags) {

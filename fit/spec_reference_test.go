@@ -72,9 +72,10 @@ func TestInflectionsOfSciPyCurves(t *testing.T) {
 	}
 }
 
-// holds checks bracket and interval of an inflection, by numerics §3: a
-// half-width of 0.475 brackets where the bracket holds most of the rise, and
-// never less than bracket/root 12 as uncertainty.
+// holds checks bracket and interval of an inflection: where the bracket holds
+// most of the rise the interval is the bracket and 0.475 brackets to either
+// side of the answer together (the latter alone held only 87 % of strong acids
+// under dynamic dosing), and the uncertainty never less than bracket/root 12.
 func holds(t *testing.T, what string, c *fit.Curve, e fit.Estimate, want float64, bracket []float64) {
 	t.Helper()
 	width := bracket[1] - bracket[0]
@@ -85,7 +86,8 @@ func holds(t *testing.T, what string, c *fit.Curve, e fit.Estimate, want float64
 		t.Errorf("%s: interval %g to %g mL without %g", what, e.Low, e.High, want)
 	}
 	if e.Leap {
-		near(t, what+", half-width", (e.High-e.Low)/2, 0.475*width, 1e-9)
+		near(t, what+", low", e.Low, math.Min(bracket[0], e.V-0.475*width), 1e-9)
+		near(t, what+", high", e.High, math.Max(bracket[1], e.V+0.475*width), 1e-9)
 	}
 	if e.Leap && e.U < width/math.Sqrt(12)*(1-1e-9) {
 		t.Errorf("%s: U %g mL below bracket/root 12 = %g", what, e.U, width/math.Sqrt(12))

@@ -49,8 +49,9 @@ func TestSoundRunsAreSound(t *testing.T) {
 	doubtful.atMost(t, "sound runs doubtful", 3)
 }
 
-// flagNames are those of numerics §4 that speak of one curve.
-const flagNames = " disagrees wide-interval wide-bracket overshoot no-endpoint stops-short poor-fit stray-reading volume-reversal stuck dilution-unknown refill "
+// flagNames are those of numerics §4 that speak of one curve, and three of this
+// package's own.
+const flagNames = " disagrees wide-interval wide-bracket overshoot no-endpoint stops-short poor-fit stray-reading volume-reversal stuck dilution-unknown refill not-compared passes-again noisy "
 
 // beyond are flags whose figure is above their limit (overshoot: or on it).
 const beyond = " disagrees wide-interval wide-bracket overshoot poor-fit stray-reading volume-reversal stuck "

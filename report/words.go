@@ -19,11 +19,14 @@ var flagWords = [...]FlagWord{
 	{"overshoot", "a dose ran over the endpoint", "Titrate again with smaller doses near the endpoint, or let a second person settle it."},
 	{"wide-bracket", "too few readings around the endpoint", "Titrate again with smaller doses near the endpoint if the bracket matters for the result."},
 	{"wide-interval", "the endpoint is uncertain", "Look at the readings named below; titrate again if the interval matters for the result."},
+	{"passes-again", "the set reading is passed more than once", "Look which pass ended the titration; a second person decides."},
+	{"noisy", "the readings scatter", "Check electrode, cable and stirrer; titrate again if the interval matters for the result."},
 	{"poor-fit", "the endpoint hangs on a few readings", "Look at the curve; titrate again if the readings do not follow one curve."},
 	{"dilution-unknown", "the volume before titration is not known", "State the aliquot and the solvent in the dump or the schema; without them a break is found too early."},
 	{"stray-reading", "a reading stands off the curve", "Look whether the curve is believable without it; it was left out."},
 	{"stuck", "the reading stood still while titrant was added", "Check electrode and stirrer; the readings were left out."},
-	{"volume-reversal", "the volume went back", "Check whether the burette was refilled or the dump was edited; readings that went back were left out."},
+	{"volume-reversal", "a volume is out of order", "Check whether the burette was refilled or the dump was edited; what is out of order was left out."},
+	{"not-compared", "the indicated endpoint could not be checked", "State the kind of the indicated endpoint as the instrument means it, or check it by hand."},
 }
 
 // Words returns how people read a flag; ok is false for a name that no flag

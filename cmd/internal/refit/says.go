@@ -36,9 +36,18 @@ func (s *sentences) says(f fit.Flag) string {
 	case "overshoot":
 		return s.overshoot(f)
 	case "wide-bracket":
-		h, _ := f.About.(float64)
-		return fmt.Sprintf("The bracket is %s mL, %s %% of the endpoint volume (limit %s %%). No reading tells where in it the endpoint lies.",
-			volume(h), report.Short(f.Figure, 2), report.Short(f.Limit, 2))
+		b := f.About.(fit.Bracket)
+		t := fmt.Sprintf("The bracket is %s mL, %s %% of the endpoint volume (limit %s %%).", volume(b.Width), report.Short(f.Figure, 2), report.Short(f.Limit, 2))
+		if b.Leap {
+			t += " No reading tells where in it the endpoint lies."
+		}
+		return t
+	case "not-compared":
+		return s.notCompared(f)
+	case "passes-again":
+		return s.passesAgain(f)
+	case "noisy":
+		return fmt.Sprintf("The readings scatter by %s (standard deviation; limit %s) and run backwards.", s.amountOf(f.Figure), s.amountOf(f.Limit))
 	case "wide-interval":
 		return s.wideInterval(f)
 	case "poor-fit":
@@ -46,10 +55,10 @@ func (s *sentences) says(f fit.Flag) string {
 	case "no-endpoint":
 		return s.noEndpoint(f)
 	case "stops-short":
-		return fmt.Sprintf("Dosing ended at %s mL, line %d, while the curve was still getting steeper; an endpoint needs readings at least %s %% beyond it.%s",
+		return fmt.Sprintf("The readings that can be used end at %s mL, line %d, while the curve was still getting steeper; an endpoint needs some at least %s %% beyond it.%s",
 			volume(f.Figure), s.line(f.At[0]), report.Short(fit.Defaults().PastPercent, 2), indicatedToo(f))
 	case "dilution-unknown":
-		return "The dump states no aliquot, so the conductivities could not be corrected for dilution by the titrant; the break is then found too early, by about 2 % when a fifth of the volume is added."
+		return "The dump states no aliquot, so the conductivities could not be corrected for dilution by the titrant; the break is then found too early."
 	case fit.LeftStray, fit.LeftStuck, fit.LeftReversal:
 		return s.leftOut(f)
 	}
@@ -81,11 +90,14 @@ func (s *sentences) amount(y float64) string {
 }
 
 // change is a difference of readings with its unit.
-func (s *sentences) change(y float64) string {
+func (s *sentences) change(y float64) string { return s.reading(y) + " " + s.run.Signal.Unit() }
+
+// rise is a change of the reading after its name: "the pH changed by 4.13".
+func (s *sentences) rise(y float64) string {
 	if s.run.Signal == ingest.PH {
 		return s.reading(y)
 	}
-	return s.amount(y)
+	return s.change(y)
 }
 
 func (s *sentences) signal() string {
@@ -103,6 +115,9 @@ func indicated(i fit.Indicated) string {
 // disagrees prints its figures in the one form that all reports give them.
 func (s *sentences) disagrees(f fit.Flag) string {
 	p := f.About.(fit.Compared)
+	if p.Lone {
+		return fmt.Sprintf("The instrument indicated %s mL too (%s); the refit finds no endpoint of its own there. The nearest is %s mL away, %s mL allowed.", indicated(p.Indicated), p.Indicated.Kind, volume(f.Figure), volume(f.Limit))
+	}
 	e := report.Endpoint{VolumeML: p.Refit.V, UML: p.Refit.U, Differs: difference(p)}
 	t := fmt.Sprintf("Refit %s mL, indicated %s mL (%s): refit − indicated %s mL, %s mL allowed.", e.Volume(), indicated(p.Indicated), p.Indicated.Kind, e.Difference(), e.DifferenceLimit())
 	if p.Indicated.Kind == fit.Inflection {
@@ -120,10 +135,44 @@ func (s *sentences) overshoot(f fit.Flag) string {
 	}
 	return fmt.Sprintf("The dose after line %d%s was %s mL, %s %% of the endpoint volume (limit %s %%) and %s times its neighbours (limit %s); the %s changed by %s inside it.",
 		s.line(f.At[0]), beside, volume(o.Dose), report.Short(o.Percent, 2), report.Short(f.Limit, 2), report.Short(o.Times, 2),
-		report.Short(fit.Defaults().OvershootTimes, 2), s.signal(), s.change(o.Rise*s.curve.Decade()))
+		report.Short(fit.Defaults().OvershootTimes, 2), s.signal(), s.rise(o.Rise*s.curve.Decade()))
+}
+
+func (s *sentences) notCompared(f fit.Flag) string {
+	i := f.About.(fit.Indicated)
+	return fmt.Sprintf("The instrument indicated %s mL as %s; the refit has no endpoint of that kind, so nothing was compared.", indicated(i), article(i.Kind))
+}
+
+// article is a kind with "a" or "an".
+func article(kind string) string {
+	if strings.ContainsAny(kind[:min(len(kind), 1)], "aeiou") {
+		return "an " + kind
+	}
+	return "a " + kind
+}
+
+func (s *sentences) passesAgain(f fit.Flag) string {
+	others := f.About.([]float64)
+	at := make([]string, 0, 3)
+	for _, v := range others[:min(len(others), 3)] {
+		at = append(at, report.Fixed(v, 2))
+	}
+	more := ""
+	if n := len(others) - len(at); n > 0 {
+		more = fmt.Sprintf(" and %d more places", n)
+	}
+	return fmt.Sprintf("The readings pass %s %d times (once allowed): also at %s mL%s.", s.amount(*s.curve.EndReading), len(others)+1, strings.Join(at, ", "), more)
+}
+
+// amountOf prints a standard deviation with two figures and its unit.
+func (s *sentences) amountOf(y float64) string {
+	return report.Short(y, 2) + " " + s.run.Signal.Unit()
 }
 
 func (s *sentences) wideInterval(f fit.Flag) string {
+	if b, ok := f.About.(fit.Bracket); ok {
+		return fmt.Sprintf("The 95 %% interval reaches %s mL from the endpoint, more than the agreement limit of %s mL; the bracket is %s mL.", volume(b.Half), volume(f.Limit), volume(b.Width))
+	}
 	cause := "scatter of the readings about the arms"
 	if e := s.result.Endpoints[f.Endpoint-1]; e.Moves > e.U/math.Sqrt2 {
 		cause = "arms that bend: the break moves when blocks of readings are left out"
@@ -182,10 +231,14 @@ func (s *sentences) leftOut(f fit.Flag) string {
 		}
 		return t + s.consequence(m)
 	case fit.LeftStuck:
-		return fmt.Sprintf("The %s stood at %s up to line %d while the curve moved by %s (limit %s); %s left out.%s", s.signal(), s.reading(s.curve.Y[at]),
-			s.line(f.At[len(f.At)-1]), s.change(f.Figure), s.change(f.Limit), were(m.Count), s.consequence(m))
+		until := fmt.Sprintf("up to line %d", s.line(f.At[len(f.At)-1]))
+		if m.First.ToEnd {
+			until = fmt.Sprintf("from line %d to the end", s.line(f.At[0]))
+		}
+		return fmt.Sprintf("The %s stood at %s %s while the curve moved by %s (limit %s); %s left out.%s", s.signal(), s.reading(s.curve.Y[at]),
+			until, s.rise(f.Figure), s.rise(f.Limit), were(m.Count), s.consequence(m))
 	}
-	return fmt.Sprintf("The volume goes back by %s mL at line %d; %s left out.", volume(f.Figure), s.line(at), were(m.Count))
+	return fmt.Sprintf("The volume in line %d, %s mL, is out of order by %s mL; %s left out.", s.line(at), volume(s.curve.V[at]), volume(f.Figure), were(m.Count))
 }
 
 // were counts readings that were left out.
