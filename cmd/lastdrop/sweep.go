@@ -19,7 +19,7 @@ func (p *program) sweepCommand() *command {
 	return &command{
 		name: "sweep", use: "FOLDER… --into OUT",
 		says: "refit every dump of the folders and publish one night",
-		more: "Reads the dumps (*.csv, *.txt, *.tsv, *.dat) in FOLDER and below, refits every endpoint from the raw readings, and writes summary.xlsx, summary.pdf, evaluations.jsonl, unread.jsonl, waiting.jsonl and last-sweep.txt into OUT: all of them or none. The summary stands on stdout. A dump is never changed. " +
+		more: "Reads the dumps (*.csv, *.txt, *.tsv, *.dat) in FOLDER and below, refits every endpoint from the raw readings, and writes summary.xlsx, summary.pdf (with more than 200 pages of runs also summary-2.pdf and so on), evaluations.jsonl, unread.jsonl, waiting.jsonl and last-sweep.txt into OUT: all of them or none. The summary stands on stdout. A dump is never changed. " +
 			"Exit: 0 done, whatever was found; 1 could not finish; 2 usage; 4 --fail-on found something; 6 no dump; 75 another sweep is at work in OUT; 130, 143 stopped.",
 		example: []string{
 			"lastdrop sweep /srv/titrations --into /srv/nights",
@@ -63,14 +63,14 @@ func (p *program) sweep(c *cli.Context) error {
 	if err != nil {
 		return err
 	}
-	var pages pdf.Result
-	r.night.Outputs = outputs(r.pages, &pages)
+	var pages []pdf.Result
+	r.night.Outputs, r.night.Former = outputs(r.pages, &pages), pdf.IsFurtherVolume
 	r.night.Log = slog.New(warnings{p: p, quiet: r.quiet})
 	result, err := night.Sweep(c.Context, r.night)
 	if err == nil {
 		tellPages(r.night.Log, pages)
 		p.tellUnread(r, result)
-		if err = p.summary(r, result); err == nil {
+		if err = p.summary(r, result, len(pages)); err == nil {
 			err = found(result.Night, r.failOn)
 		}
 	}
@@ -97,21 +97,25 @@ func (p *program) last(r *request, result *night.Result, err error) error {
 }
 
 // summary prints what a timer mails.
-func (p *program) summary(r *request, result *night.Result) error {
+func (p *program) summary(r *request, result *night.Result, volumes int) error {
 	if r.json || r.quiet {
 		return nil
 	}
-	return terminal.Summary(p.stdout, result.Night, result.Files)
+	return terminal.Summary(p.stdout, result.Night, terminal.SummaryOptions{Files: result.Files, Volumes: volumes})
 }
 
 // tellPages warns of pages that could not be drawn and of signs that were
 // replaced.
-func tellPages(log *slog.Logger, pages pdf.Result) {
-	for _, f := range pages.Failed {
-		log.Warn("a page could not be drawn; one that says so stands in its place", "page", f.Page, "of", f.What, "cause", f.Says)
+func tellPages(log *slog.Logger, volumes []pdf.Result) {
+	var replaced []string
+	for i, pages := range volumes {
+		for _, f := range pages.Failed {
+			log.Warn("a page could not be drawn; one that says so stands in its place", "file", pdf.FileName(i+1), "page", f.Page, "of", f.What, "cause", f.Says)
+		}
+		replaced = append(replaced, pages.Replaced...)
 	}
-	if n := len(pages.Replaced); n > 0 {
-		log.Warn("signs that the font has not were replaced", "texts", n, "first", pages.Replaced[0])
+	if n := len(replaced); n > 0 {
+		log.Warn("signs that the font has not were replaced", "texts", n, "first", replaced[0])
 	}
 }
 

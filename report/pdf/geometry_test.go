@@ -14,28 +14,38 @@ import (
 func TestGeometry(t *testing.T) {
 	for name, c := range nights() {
 		for _, o := range []Options{{Pages: c.pages}, {Pages: c.pages, Letter: true}} {
-			d, err := newDocument(c.night, o)
+			b, err := Plan(c.night, o)
 			if err != nil {
 				t.Fatal(err)
 			}
-			s := figure.NewSheet(d.width, d.height)
-			faults := 0
-			for i := range d.pages {
-				if says := attempt(s, func() { d.pages[i].draw(s, i+1) }); says != "" {
-					t.Errorf("%s, letter %v, page %d: %s", name, o.Letter, i+1, says)
-					continue
-				}
-				for _, f := range geometryFaults(s) {
-					if faults++; faults <= 12 {
-						t.Errorf("%s, letter %v, page %d: %s", name, o.Letter, i+1, f)
-					}
-				}
+			const most = 12
+			faults := b.faults()
+			for _, f := range faults[:min(len(faults), most)] {
+				t.Errorf("%s, letter %v, %s", name, o.Letter, f)
 			}
-			if faults > 12 {
-				t.Errorf("%s, letter %v: %d faults in all", name, o.Letter, faults)
+			if len(faults) > most {
+				t.Errorf("%s, letter %v: %d faults in all", name, o.Letter, len(faults))
 			}
 		}
 	}
+}
+
+// faults draws every page of every volume and lists what is wrong with it.
+func (b *Book) faults() (all []string) {
+	s := figure.NewSheet(b.width, b.height)
+	for _, d := range b.volumes {
+		for i := range d.pages {
+			page := fmt.Sprintf("volume %d, page %d: ", d.volume, i+1)
+			if says := attempt(s, func() { d.pages[i].draw(s, i+1) }); says != "" {
+				all = append(all, page+says)
+				continue
+			}
+			for _, f := range geometryFaults(s) {
+				all = append(all, page+f)
+			}
+		}
+	}
+	return all
 }
 
 // slack is how far boxes may overlap, mm: boxes are as high as the highest

@@ -29,7 +29,7 @@ func (d *document) listSection() section {
 		d.lane(s, half).Axis(y+0.4, laneTicks(half))
 	}}}
 	again := false
-	for _, i := range d.large {
+	for _, i := range d.urgent {
 		e := &d.n.Evaluations[i]
 		if e.Verdict == report.VerdictSound {
 			continue
@@ -178,15 +178,19 @@ func (d *document) drawRow(s *figure.Sheet, e *report.Evaluation, y float64, sam
 	paragraph(s, reasonX, base+bodyLead, bodyLead, bodyStyle, reason)
 }
 
-// drawPageLink leads to the page of a run, where it has one.
+// drawPageLink leads to the page of a run, where it has one; of another volume
+// it can only tell.
 func (d *document) drawPageLink(s *figure.Sheet, i int, y float64) {
-	page := d.runPage[i]
-	if page == 0 {
-		return
+	at, base, st := d.runAt[i], y+3.9, noteStyle.In(figure.Blue)
+	switch at.volume {
+	case 0:
+	case d.volume:
+		from := s.TextRight(right, base, st, "page "+whole(at.page))
+		s.Link(figure.Box{Left: from, Top: base - 2.5, Right: right, Bottom: base + 1}, at.page)
+	default:
+		s.TextRight(right, base, st, "volume "+whole(at.volume))
+		s.TextRight(right, base+noteLead, st, "page "+whole(at.page))
 	}
-	base := y + 3.9
-	from := s.TextRight(right, base, noteStyle.In(figure.Blue), "page "+whole(page))
-	s.Link(figure.Box{Left: from, Top: base - 2.5, Right: right, Bottom: base + 1}, page)
 }
 
 func procedureName(e *report.Evaluation) string {

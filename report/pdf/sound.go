@@ -39,7 +39,7 @@ func (d *document) planSmall() {
 		f.addSection(white, g.section())
 		white = 5
 	}
-	d.smallPages = [2]int{len(d.pages) + 1, len(d.pages) + len(f.pages)}
+	d.smallAt = stretch{d.volume, len(d.pages) + 1, d.volume, len(d.pages) + len(f.pages)}
 	done := 0
 	for i, items := range f.pages {
 		from := done + 1

@@ -14,17 +14,22 @@ const (
 	unreadMost = 12
 )
 
+// SummaryOptions are what the summary tells besides the night.
+type SummaryOptions struct {
+	Files   []string // paths of what was written
+	Volumes int      // that the pages fill; more than one is told
+}
+
 // Summary writes the short summary of a night that a timer mails: plain text,
 // short lines, the most urgent first, readable without a table's alignment.
-// files are the paths of what was written.
-func Summary(w io.Writer, n *report.Night, files []string) error {
+func Summary(w io.Writer, n *report.Night, o SummaryOptions) error {
 	p := newPage(Options{Width: mailWidth})
 	p.headline(n)
 	p.totals(n)
 	p.urgent(n)
 	p.unreadShort(n)
 	p.waiting(n)
-	p.files(files)
+	p.files(o)
 	p.blank()
 	p.sentence(plain, "", report.Caution)
 	if n.Invented {
@@ -240,13 +245,16 @@ func waitingNames(waiting []report.Waiting) string {
 
 // files are not wrapped: a path that is broken can be neither copied nor
 // tapped.
-func (p *page) files(files []string) {
-	if len(files) == 0 {
+func (p *page) files(o SummaryOptions) {
+	if len(o.Files) == 0 {
 		return
 	}
 	p.blank()
 	p.line(piece{strong, "FILES"})
-	for _, f := range files {
+	for _, f := range o.Files {
 		p.line(piece{plain, Clean(f)})
+	}
+	if o.Volumes > 1 {
+		p.sentence(plain, "", "The pages fill "+report.Number(o.Volumes)+" volumes; the most urgent runs stand in summary.pdf.")
 	}
 }
