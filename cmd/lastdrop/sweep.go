@@ -38,6 +38,7 @@ func sweepOptions() []option {
 		{flag: &cli.StringSliceFlag{Name: "fail-on"}, value: "WHAT", says: "exit with 4 when there is one: unread, disputed, or doubtful (disputed ones too); may be given again", without: "0 whatever was found"},
 		{flag: &cli.StringFlag{Name: "pages", Value: "flagged"}, value: "WHICH", says: "runs that get a page of their own: flagged (disputed and doubtful) or all", without: "flagged"},
 		{flag: &cli.StringFlag{Name: "paper", Value: "a4"}, value: "SHEET", says: "a4 or letter", without: "a4"},
+		decimalOption("pages and summary"),
 		{flag: &cli.StringFlag{Name: "laboratory"}, value: "NAME", says: "name on every page", without: "none", example: `--laboratory "Quay Road"`},
 		{flag: &cli.IntFlag{Name: "workers"}, value: "N", says: "dumps refitted at the same time, from 1 on; the night is the same with any", without: "one a processor"},
 		{flag: &cli.BoolFlag{Name: "json"}, says: "one JSON object with counts and files on stdout instead of the summary"},
@@ -101,7 +102,7 @@ func (p *program) summary(r *request, result *night.Result, volumes int) error {
 	if r.json || r.quiet {
 		return nil
 	}
-	return terminal.Summary(p.stdout, result.Night, terminal.SummaryOptions{Files: result.Files, Volumes: volumes})
+	return terminal.Summary(p.stdout, result.Night, terminal.SummaryOptions{Files: result.Files, Volumes: volumes, Decimal: r.pages.Decimal})
 }
 
 // tellPages warns of pages that could not be drawn and of signs that were

@@ -13,6 +13,7 @@ const volumePages = 200
 // need. It refers to the night, which must not change until all is written.
 type Book struct {
 	n             *report.Night
+	mark          report.Decimal
 	width, height float64 // of the sheet, mm
 	figureLess    float64 // mm that figures are lower than on A4
 	urgent        []int   // evaluations with a large page, most urgent first
@@ -32,7 +33,7 @@ func Plan(n *report.Night, o Options) (*Book, error) {
 	if o.Pages != "" && o.Pages != "flagged" && o.Pages != "all" {
 		return nil, &OptionError{Option: "pages", Value: o.Pages, Want: "flagged or all"}
 	}
-	b := &Book{n: n, width: 210, height: 297, runAt: make([]stretch, len(n.Evaluations))}
+	b := &Book{n: n, mark: o.Decimal, width: 210, height: 297, runAt: make([]stretch, len(n.Evaluations))}
 	if o.Letter {
 		b.width, b.height, b.figureLess = 215.9, 279.4, 18
 	}

@@ -49,7 +49,7 @@ func (d *document) listHead() item {
 
 // lane is the scale of differences that the rows of the front page share.
 func (d *document) lane(s *figure.Sheet, half float64) *figure.Lane {
-	return figure.NewLane(s, scaleFrom, scaleTo, -half, half, report.Fixed)
+	return figure.NewLane(s, scaleFrom, scaleTo, -half, half, d.mark.Fixed)
 }
 
 func laneTicks(half float64) figure.Ticks { return figure.NewTicks(-half, half, 5) }
@@ -126,7 +126,7 @@ func noDifference(e *report.Evaluation) string {
 func (d *document) listRow(i int, half float64, firstOf bool) item {
 	e := &d.n.Evaluations[i]
 	sample := sampleLines(e)
-	reason := reasonLines(e)
+	reason := reasonLines(e, d.mark)
 	lines := max(len(sample)+1, len(reason)+1)
 	h := 2.1 + bodyLead*float64(lines)
 	return item{height: h, draw: func(s *figure.Sheet, y float64) {
@@ -155,12 +155,12 @@ func sampleLines(e *report.Evaluation) []string {
 }
 
 // reasonLines is the sentence of the flag that makes the verdict.
-func reasonLines(e *report.Evaluation) []string {
+func reasonLines(e *report.Evaluation, m report.Decimal) []string {
 	f := heaviest(e)
 	if f == nil {
 		return nil
 	}
-	return figure.WrapAtMost(bodyStyle, f.Says, reasonEnd-reasonX, 3)
+	return figure.WrapAtMost(bodyStyle, m.Says(f.Says), reasonEnd-reasonX, 3)
 }
 
 func (d *document) drawRow(s *figure.Sheet, e *report.Evaluation, y float64, sample, reason []string) {
@@ -219,7 +219,7 @@ func (d *document) drawDifference(s *figure.Sheet, e *report.Evaluation, half, y
 		l.Bar(low, high, base-0.9, rule(figure.Blue, 1.1))
 	}
 	l.Point(x.Percent, base-0.9, figure.Disc, 2, figure.Blue, false)
-	value := report.Signed(x.Percent, 2)
+	value := d.mark.Signed(x.Percent, 2)
 	s.TextRight(valueEnd, base, noteStyle.In(figure.Black), value)
 	if len(e.Endpoints) > 1 {
 		s.TextRight(valueEnd, base+noteLead, noteStyle, "endpoint "+whole(p.N))

@@ -170,7 +170,7 @@ func (d *document) drawStrip(s *figure.Sheet, g *group, half, y float64) {
 	}
 	text, st := report.Dash, noteStyle.In(figure.Black)
 	if m, ok := median(all); ok {
-		text = report.Signed(m, 2)
+		text = d.mark.Signed(m, 2)
 	}
 	s.TextRight(valueEnd, y+3.4, st, text)
 }

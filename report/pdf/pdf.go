@@ -18,10 +18,12 @@ import (
 	"lastdrop/report/pdf/paper"
 )
 
-// Options choose the sheet and which runs get a page of their own.
+// Options choose the sheet, which runs get a page of their own, and the mark
+// in figures.
 type Options struct {
-	Letter bool   // US Letter; A4 without
-	Pages  string // "flagged" (also when ""): disputed and doubtful runs; "all": every run
+	Letter  bool   // US Letter; A4 without
+	Pages   string // "flagged" (also when ""): disputed and doubtful runs; "all": every run
+	Decimal report.Decimal
 }
 
 // Result tells what was written.

@@ -22,6 +22,7 @@ const (
 
 // smallGroup is what shares a scale.
 type smallGroup struct {
+	mark                   report.Decimal
 	runs                   []*report.Evaluation
 	fromML, toML, low, top float64
 	yTicks, xTicks         figure.Ticks
@@ -79,7 +80,7 @@ func (d *document) smallGroups() []*smallGroup {
 			out[n-1].runs = append(out[n-1].runs, e)
 			continue
 		}
-		out = append(out, &smallGroup{runs: []*report.Evaluation{e}})
+		out = append(out, &smallGroup{mark: d.mark, runs: []*report.Evaluation{e}})
 	}
 	for _, g := range out {
 		slices.SortStableFunc(g.runs, func(a, b *report.Evaluation) int {
@@ -119,8 +120,8 @@ func (g *smallGroup) section() section {
 	e := g.runs[0]
 	sec := section{head: item{height: 8, draw: func(s *figure.Sheet, y float64) {
 		note := e.Picture.YName
-		if e.Picture.XName != "" {
-			note += "; " + e.Picture.XName
+		if x := g.mark.Axis(e); x != "" {
+			note += "; " + x
 		}
 		blockTitle(s, left, right, y, figure.Shorten(titleStyle, procedureName(e), 90), note)
 	}}}
@@ -145,7 +146,7 @@ func (g *smallGroup) section() section {
 func (g *smallGroup) axes(s *figure.Sheet, k int, y float64) *figure.Axes {
 	x := left + 45*float64(k)
 	area := figure.Box{Left: x, Top: y + smallTop, Right: x + smallWidth, Bottom: y + smallTop + smallHeight}
-	return figure.NewAxes(s, area, [2]float64{g.fromML, g.toML}, [2]float64{g.low, g.top}, report.Fixed)
+	return figure.NewAxes(s, area, [2]float64{g.fromML, g.toML}, [2]float64{g.low, g.top}, g.mark.Fixed)
 }
 
 // draw is one small picture.
@@ -235,9 +236,9 @@ func (g *smallGroup) drawFigures(a *figure.Axes, e *report.Evaluation, line []re
 	for k := range n {
 		p := &e.Endpoints[k]
 		y := top + 2.4 + noteLead*float64(k)
-		a.Sheet.TextRight(x+w, y, noteStyle.In(figure.Blue), p.Volume())
+		a.Sheet.TextRight(x+w, y, noteStyle.In(figure.Blue), g.mark.Of(p.Volume()))
 		if p.Differs != nil {
-			a.Sheet.TextRight(x+width, y, noteStyle.In(figure.Black), report.Signed(p.Differs.Percent, 2))
+			a.Sheet.TextRight(x+width, y, noteStyle.In(figure.Black), g.mark.Signed(p.Differs.Percent, 2))
 		}
 	}
 }
