@@ -13,13 +13,14 @@ import (
 // outputs are the files of a night. Those that a person may hold open come
 // first: where the system refuses to replace one, nothing has moved yet.
 // told receives what became of the pages, volume by volume.
-func outputs(o pdf.Options, told *[]pdf.Result) func(*report.Night) ([]night.Output, error) {
+func outputs(o pdf.Options, curves bool, told *[]pdf.Result) func(*report.Night) ([]night.Output, error) {
 	return func(n *report.Night) ([]night.Output, error) {
 		book, err := pdf.Plan(n, o)
 		if err != nil {
 			return nil, err
 		}
-		all := []night.Output{{Name: "summary.xlsx", Write: xlsx.Write}}
+		sheets := xlsx.Options{HasCurves: curves, Curves: book.Runs()}
+		all := []night.Output{{Name: "summary.xlsx", Write: func(w io.Writer, n *report.Night) error { return xlsx.Write(w, n, sheets) }}}
 		results := make([]pdf.Result, book.Volumes())
 		*told = results
 		for i := range results {

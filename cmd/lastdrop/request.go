@@ -18,7 +18,7 @@ const sweepHelp = "lastdrop sweep --help"
 // request reads and checks all options of a sweep before anything is touched.
 // The request is there with an error too.
 func (p *program) request(c *cli.Context) (*request, error) {
-	r := &request{json: c.Bool("json"), quiet: c.Bool("quiet"), failOn: splitAll(c.StringSlice("fail-on"))}
+	r := &request{json: c.Bool("json"), quiet: c.Bool("quiet"), curves: c.Bool("curves"), failOn: splitAll(c.StringSlice("fail-on"))}
 	r.night = night.Options{
 		Folders: c.Args().Slice(), Into: c.String("into"), MinAge: c.Duration("min-age"), Now: p.now,
 		Workers: c.Int("workers"), Laboratory: c.String("laboratory"), Estimator: c.String("estimator"),

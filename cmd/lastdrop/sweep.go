@@ -37,6 +37,7 @@ func sweepOptions() []option {
 		{flag: &cli.DurationFlag{Name: "min-age"}, value: "TIME", says: "younger dumps wait for the next sweep; s, m or h stand behind the number", without: "0s", example: "--min-age 15m"},
 		{flag: &cli.StringSliceFlag{Name: "fail-on"}, value: "WHAT", says: "exit with 4 when there is one: unread, disputed, or doubtful (disputed ones too); may be given again", without: "0 whatever was found"},
 		{flag: &cli.StringFlag{Name: "pages", Value: "flagged"}, value: "WHICH", says: "runs that get a page of their own: flagged (disputed and doubtful) or all", without: "flagged"},
+		{flag: &cli.BoolFlag{Name: "curves"}, says: "a sheet Curves in the workbook: readings and computed curve of the runs that have a page, with a chart for the first 50"},
 		{flag: &cli.StringFlag{Name: "paper", Value: "a4"}, value: "SHEET", says: "a4 or letter", without: "a4"},
 		decimalOption("pages and summary"),
 		{flag: &cli.StringFlag{Name: "laboratory"}, value: "NAME", says: "name on every page", without: "none", example: `--laboratory "Quay Road"`},
@@ -51,6 +52,7 @@ type request struct {
 	night  night.Options
 	pages  pdf.Options
 	failOn []string
+	curves bool
 	json   bool
 	quiet  bool
 }
@@ -65,7 +67,7 @@ func (p *program) sweep(c *cli.Context) error {
 		return err
 	}
 	var pages []pdf.Result
-	r.night.Outputs, r.night.Former = outputs(r.pages, &pages), pdf.IsFurtherVolume
+	r.night.Outputs, r.night.Former = outputs(r.pages, r.curves, &pages), pdf.IsFurtherVolume
 	r.night.Log = slog.New(warnings{p: p, quiet: r.quiet})
 	result, err := night.Sweep(c.Context, r.night)
 	if err == nil {

@@ -1,6 +1,7 @@
 package pdf
 
 import (
+	"slices"
 	"strconv"
 
 	"lastdrop/report"
@@ -70,6 +71,9 @@ func volumeEnds(runs []*runPage) (ends []int) {
 	}
 	return append(ends, len(runs))
 }
+
+// Runs returns the evaluations with a large page, most urgent first.
+func (b *Book) Runs() []int { return slices.Clone(b.urgent) }
 
 // Volumes returns how many volumes there are, at least one.
 func (b *Book) Volumes() int { return len(b.volumes) }
