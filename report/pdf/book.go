@@ -1,10 +1,12 @@
 package pdf
 
 import (
+	"fmt"
 	"slices"
 	"strconv"
 
 	"lastdrop/report"
+	"lastdrop/report/figure"
 )
 
 // volumePages is how many large run pages a volume holds at most.
@@ -77,6 +79,25 @@ func (b *Book) Runs() []int { return slices.Clone(b.urgent) }
 
 // Volumes returns how many volumes there are, at least one.
 func (b *Book) Volumes() int { return len(b.volumes) }
+
+// Faults draws every page and lists, with volume and page, what cannot be drawn
+// or stands where it should not; see figure.Sheet.Faults. It is how tests look
+// at the pages of a night.
+func (b *Book) Faults() (all []string) {
+	s := figure.NewSheet(b.width, b.height)
+	for _, d := range b.volumes {
+		for i := range d.pages {
+			found := []string{attempt(s, func() { d.pages[i].draw(s, i+1) })}
+			if found[0] == "" {
+				found = s.Faults()
+			}
+			for _, f := range found {
+				all = append(all, fmt.Sprintf("volume %d, page %d, %s: %s", d.volume, i+1, d.pages[i].what, f))
+			}
+		}
+	}
+	return all
+}
 
 // FileName is the name of a volume, from 1: summary.pdf, summary-2.pdf, …
 func FileName(volume int) string {

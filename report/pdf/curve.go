@@ -74,7 +74,7 @@ func (r *runPage) drawMain(s *figure.Sheet, p *report.Picture, edge float64) {
 	if len(p.Residuals) > 0 {
 		r.drawResiduals(s, p, figure.Box{Left: plotLeft, Top: axisAt - 1 - stemHeight, Right: edge, Bottom: axisAt - 1}, a)
 	}
-	a.Bottom(axisAt, figure.NewTicks(fromML, toML, int((edge-plotLeft)/11)))
+	a.Bottom(axisAt, a.X.LevelTicks(int((edge-plotLeft)/11), a.Print))
 	s.TextRight(edge, r.figFoot, scaleStyle, figure.Shorten(scaleStyle, r.d.mark.Axis(r.e), edge-plotLeft))
 }
 

@@ -26,7 +26,7 @@ func (d *document) listSection() section {
 	half := d.halfScale()
 	sec := section{most: listRows, head: d.listHead(), foot: item{height: 6.5, draw: func(s *figure.Sheet, y float64) {
 		s.TextRight(reasonEnd, y+3.4, noteStyle, "like kinds; grey: agreement limit; bar: 95 % from readings")
-		d.lane(s, half).Axis(y+0.4, laneTicks(half))
+		d.laneAxis(s, half, y)
 	}}}
 	again := false
 	for _, i := range d.urgent {
@@ -52,7 +52,11 @@ func (d *document) lane(s *figure.Sheet, half float64) *figure.Lane {
 	return figure.NewLane(s, scaleFrom, scaleTo, -half, half, d.mark.Fixed)
 }
 
-func laneTicks(half float64) figure.Ticks { return figure.NewTicks(-half, half, 5) }
+// laneAxis draws that scale with its numbers.
+func (d *document) laneAxis(s *figure.Sheet, half, y float64) {
+	l := d.lane(s, half)
+	l.Axis(y+0.4, l.X.LevelTicks(5, l.Print))
+}
 
 // halfScale is how far the scale of differences reaches to each side, in %:
 // far enough for all but the quarter that lie furthest out, and for twice the

@@ -110,7 +110,7 @@ func (r *runPage) drawEnlarged(s *figure.Sheet, p *report.Picture, q *report.End
 	r.drawDrops(a, p)
 	a.Rail(near(r.rail(false), from, to))
 	drawNumbers(a, inside, q)
-	a.Bottom(axis, figure.NewTicks(from, to, 5))
+	a.Bottom(axis, a.X.LevelTicks(5, a.Print))
 	note := "numbers: lines of the dump"
 	if len(p.Curve) > 0 {
 		note += "; dotted: a guess"
@@ -377,7 +377,7 @@ func scaleItem(e *report.Evaluation, p *report.Endpoint, m report.Decimal) item 
 			drawScaleRow(s, l, r, y)
 			y += scaleRowHeight
 		}
-		l.Axis(y-1.6, figure.NewTicks(from, to, 4))
+		l.Axis(y-1.6, l.X.LevelTicks(4, l.Print))
 	}}
 }
 

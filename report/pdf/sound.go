@@ -25,7 +25,7 @@ type smallGroup struct {
 	mark                   report.Decimal
 	runs                   []*report.Evaluation
 	fromML, toML, low, top float64
-	yTicks, xTicks         figure.Ticks
+	yTicks                 figure.Ticks
 	ghost                  []report.XY // V by V of the endpoint, reading
 }
 
@@ -112,7 +112,7 @@ func (g *smallGroup) scale() {
 	}
 	g.fromML, g.toML = x.from, x.to
 	g.low, g.top = padded(y.from, y.to, 0.06, 0.06)
-	g.yTicks, g.xTicks = figure.NewTicks(g.low, g.top, 3), figure.NewTicks(g.fromML, g.toML, 4)
+	g.yTicks = figure.NewTicks(g.low, g.top, 3)
 	g.ghost = typical(g.runs)
 }
 
@@ -126,9 +126,11 @@ func (g *smallGroup) section() section {
 		blockTitle(s, left, right, y, figure.Shorten(titleStyle, procedureName(e), 90), note)
 	}}}
 	sec.foot = item{height: 4, draw: func(s *figure.Sheet, y float64) {
+		// The last number may stand half beyond the last picture.
+		defer s.Block("axes of small pictures", figure.Box{Left: left - 10, Top: y, Right: right + 3, Bottom: y + 4})()
 		for k := range min(len(g.runs), smallAcross) {
 			a := g.axes(s, k, y-smallPitch)
-			a.Bottom(y-0.9, g.xTicks)
+			a.Bottom(y-0.9, a.X.LevelTicks(4, a.Print))
 		}
 		s.TextRight(left-2, y+2.4, noteStyle, "mL")
 	}}

@@ -76,7 +76,7 @@ func TestVolumesTell(t *testing.T) {
 			}
 		}
 	}
-	for _, f := range b.faults() {
+	for _, f := range b.Faults() {
 		t.Error(f)
 	}
 }
