@@ -80,22 +80,38 @@ func (b *Book) Runs() []int { return slices.Clone(b.urgent) }
 // Volumes returns how many volumes there are, at least one.
 func (b *Book) Volumes() int { return len(b.volumes) }
 
-// Faults draws every page and lists, with volume and page, what cannot be drawn
-// or stands where it should not; see figure.Sheet.Faults. It is how tests look
-// at the pages of a night.
-func (b *Book) Faults() (all []string) {
+// Drawn is a page as it was drawn.
+type Drawn struct {
+	Volume, Page int
+	What         string        // the run's id and dump, or the name of the page
+	Says         string        // why it could not be drawn; "" when it could
+	Sheet        *figure.Sheet // good until the next page is drawn
+}
+
+// Draw draws every page in turn and shows it: how tests look at the pages of a
+// night.
+func (b *Book) Draw(show func(Drawn)) {
 	s := figure.NewSheet(b.width, b.height)
 	for _, d := range b.volumes {
 		for i := range d.pages {
-			found := []string{attempt(s, func() { d.pages[i].draw(s, i+1) })}
-			if found[0] == "" {
-				found = s.Faults()
-			}
-			for _, f := range found {
-				all = append(all, fmt.Sprintf("volume %d, page %d, %s: %s", d.volume, i+1, d.pages[i].what, f))
-			}
+			says := attempt(s, func() { d.pages[i].draw(s, i+1) })
+			show(Drawn{Volume: d.volume, Page: i + 1, What: d.pages[i].what, Says: says, Sheet: s})
 		}
 	}
+}
+
+// Faults draws every page and lists, with volume and page, what cannot be drawn
+// or stands where it should not; see figure.Sheet.Faults.
+func (b *Book) Faults() (all []string) {
+	b.Draw(func(p Drawn) {
+		found := []string{p.Says}
+		if p.Says == "" {
+			found = p.Sheet.Faults()
+		}
+		for _, f := range found {
+			all = append(all, fmt.Sprintf("volume %d, page %d, %s: %s", p.Volume, p.Page, p.What, f))
+		}
+	})
 	return all
 }
 

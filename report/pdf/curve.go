@@ -300,8 +300,8 @@ func (r *runPage) drawLabels(a *figure.Axes, p *report.Picture, titleEnd float64
 		q := &r.e.Endpoints[i]
 		if same := i > 0 && q.BracketML == r.e.Endpoints[i-1].BracketML; q.BracketML[1] > q.BracketML[0] && !same {
 			edge := figure.Point{X: a.X.MM(q.BracketML[0]), Y: a.Area.Top + 2}
-			if !a.Label(noteStyle, r.d.mark.Of(bracketText(q)), edge, 30) && i == 0 {
-				homeless = append(homeless, r.d.mark.Of(bracketText(q)))
+			if !a.Label(noteStyle, r.bracketText(q), edge, 30) && i == 0 {
+				homeless = append(homeless, r.bracketText(q))
 			}
 		}
 	}
@@ -319,6 +319,10 @@ func (r *runPage) drawLabels(a *figure.Axes, p *report.Picture, titleEnd float64
 			x = a.Sheet.TextRight(x, r.figTop, noteStyle, text) - 4
 		}
 	}
+}
+
+func (r *runPage) bracketText(q *report.Endpoint) string {
+	return "bracket " + r.d.mark.Of(q.Bracket()) + " mL"
 }
 
 // slopePeak is where the derivative's silhouette is highest.

@@ -106,7 +106,7 @@ func (p *page) bracketSays(e *report.Evaluation, r *report.Endpoint) string {
 }
 
 func (p *page) readingAt(e *report.Evaluation, volumeML float64) string {
-	says := p.mark.Fixed(volumeML, 3) + " mL"
+	says := p.mark.Fixed(volumeML, report.BracketDecimals) + " mL"
 	if e.Picture == nil {
 		return says
 	}
