@@ -45,7 +45,7 @@ func (e *Endpoint) DifferenceLimit() string {
 	if e.Differs == nil {
 		return Dash
 	}
-	return Short(e.Differs.LimitML, 2)
+	return Fixed(e.Differs.LimitML, UDecimals(e.Differs.LimitML))
 }
 
 // DifferencePercent is the one printed form of the difference in % of the

@@ -44,10 +44,11 @@ func StepDecimals(step float64, fallback int) int {
 	return min(max(int(math.Ceil(-math.Log10(step)-1e-9)), 0), 6)
 }
 
-// Fixed prints v with so many decimals, half to even, with a true minus sign
-// and never "−0.00".
+// Fixed prints v with so many decimals, with a true minus sign and never
+// "−0.00". It rounds the 15 significant digits that a workbook keeps, half away
+// from zero: so office programs show the same figure that the pages print.
 func Fixed(v float64, decimals int) string {
-	s := strconv.FormatFloat(v, 'f', decimals, 64)
+	s := halfAway(v, decimals)
 	if strings.HasPrefix(s, "-") {
 		s = s[1:]
 		if strings.Trim(s, "0.") == "" {
@@ -56,6 +57,44 @@ func Fixed(v float64, decimals int) string {
 		return Minus + s
 	}
 	return s
+}
+
+// keptDigits are the significant digits of a number in a workbook.
+const keptDigits = 15
+
+// halfAway rounds on the decimal digits of v.
+func halfAway(v float64, decimals int) string {
+	s := strconv.FormatFloat(v, 'e', keptDigits-1, 64) // -d.dddddddddddddde-dd
+	mantissa, power, ok := strings.Cut(s, "e")
+	exponent, err := strconv.Atoi(power)
+	keep := exponent + 1 + decimals // digits that stay
+	if !ok || err != nil || keep >= keptDigits || keep < 0 {
+		return strconv.FormatFloat(v, 'f', decimals, 64)
+	}
+	sign := ""
+	if mantissa[0] == '-' {
+		sign, mantissa = "-", mantissa[1:]
+	}
+	digits := "0" + mantissa[:1] + mantissa[2:] // a place for what is carried
+	kept := []byte(digits[:keep+1])
+	if digits[keep+1] >= '5' {
+		i := len(kept) - 1
+		for ; kept[i] == '9'; i-- {
+			kept[i] = '0'
+		}
+		kept[i]++
+	}
+	for len(kept) < decimals+1 { // before the point stands a digit
+		kept = append([]byte{'0'}, kept...)
+	}
+	whole := strings.TrimLeft(string(kept[:len(kept)-decimals]), "0")
+	if whole == "" {
+		whole = "0"
+	}
+	if decimals == 0 {
+		return sign + whole
+	}
+	return sign + whole + "." + string(kept[len(kept)-decimals:])
 }
 
 // Signed is Fixed with a plus sign before positive figures.
@@ -85,6 +124,16 @@ func (e *Endpoint) Volume() string { return Fixed(e.VolumeML, VolumeDecimals(e.U
 func (e *Endpoint) Interval() string {
 	d := VolumeDecimals(e.UML)
 	return Fixed(e.Low95ML, d) + " to " + Fixed(e.High95ML, d)
+}
+
+// BracketDecimals are those of the two volumes of a bracket, in mL: burettes
+// print three.
+const BracketDecimals = 3
+
+// Bracket is the one printed form of the readings on either side of the
+// endpoint, in mL without unit.
+func (e *Endpoint) Bracket() string {
+	return Fixed(e.BracketML[0], BracketDecimals) + " to " + Fixed(e.BracketML[1], BracketDecimals)
 }
 
 // Volume is the one printed form of an indicated endpoint, with the decimals

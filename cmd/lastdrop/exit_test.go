@@ -150,10 +150,11 @@ func TestNamesStayOnTheirLine(t *testing.T) {
 func TestWarningsOfThePages(t *testing.T) {
 	var stderr strings.Builder
 	p := &program{stderr: &stderr}
-	pages := pdf.Result{Failed: []pdf.Failed{{Page: 3, What: "run 9f31c07a52de of dumps/1.csv", Says: "no number\nhere"}}, Replaced: []string{"V-12 \U0001F9EA", "V-13"}}
+	pages := []pdf.Result{{Replaced: []string{"V-12 \U0001F9EA"}},
+		{Failed: []pdf.Failed{{Page: 3, What: "run 9f31c07a52de of dumps/1.csv", Says: "no number\nhere"}}, Replaced: []string{"V-13"}}}
 	tellPages(slog.New(warnings{p: p}), pages)
 	tellPages(slog.New(warnings{p: p, quiet: true}), pages)
-	want := "lastdrop: warning: a page could not be drawn; one that says so stands in its place, page: 3, of: run 9f31c07a52de of dumps/1.csv, cause: no number, here\n" +
+	want := "lastdrop: warning: a page could not be drawn; one that says so stands in its place, file: summary-2.pdf, page: 3, of: run 9f31c07a52de of dumps/1.csv, cause: no number, here\n" +
 		"lastdrop: warning: signs that the font has not were replaced, texts: 2, first: V-12 \U0001F9EA\n"
 	if stderr.String() != want {
 		t.Errorf("stderr:\n got %q\nwant %q", stderr.String(), want)

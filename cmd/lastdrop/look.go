@@ -26,6 +26,7 @@ func (p *program) lookCommand() *command {
 		options: []option{
 			{flag: &cli.StringFlag{Name: "estimator"}, value: "NAME", says: "use this estimator, see lastdrop sweep --help", without: "each run has the usual one for its readings", example: "--estimator two-line"},
 			{flag: &cli.BoolFlag{Name: "no-colour"}, says: "no colours; there are none either when NO_COLOR is set, TERM is dumb, or stdout is no terminal"},
+			decimalOption("what is shown"),
 		},
 		action: p.look,
 	}
@@ -37,6 +38,9 @@ func (p *program) look(c *cli.Context) error {
 	}
 	path, estimator := c.Args().First(), c.String("estimator")
 	if err := checkEstimator(estimator); err != nil {
+		return err
+	}
+	if err := checkDecimal(c); err != nil {
 		return err
 	}
 	data, err := readDump(path)
@@ -51,7 +55,7 @@ func (p *program) look(c *cli.Context) error {
 	for i := range unread {
 		unread[i].Record, unread[i].State, unread[i].Dump = report.Record, "new", path
 	}
-	return terminal.Look(p.stdout, done, unread, terminal.Options{Colour: p.colours() && !c.Bool("no-colour")})
+	return terminal.Look(p.stdout, done, unread, terminal.Options{Colour: p.colours() && !c.Bool("no-colour"), Decimal: decimals[c.String("decimal")]})
 }
 
 func readDump(path string) ([]byte, error) {

@@ -18,13 +18,13 @@ const sweepHelp = "lastdrop sweep --help"
 // request reads and checks all options of a sweep before anything is touched.
 // The request is there with an error too.
 func (p *program) request(c *cli.Context) (*request, error) {
-	r := &request{json: c.Bool("json"), quiet: c.Bool("quiet"), failOn: splitAll(c.StringSlice("fail-on"))}
+	r := &request{json: c.Bool("json"), quiet: c.Bool("quiet"), curves: c.Bool("curves"), failOn: splitAll(c.StringSlice("fail-on"))}
 	r.night = night.Options{
 		Folders: c.Args().Slice(), Into: c.String("into"), MinAge: c.Duration("min-age"), Now: p.now,
 		Workers: c.Int("workers"), Laboratory: c.String("laboratory"), Estimator: c.String("estimator"),
 		Lastdrop: version, Limits: refit.Limits(), Refit: evaluator(c.String("estimator")),
 	}
-	r.pages = pdf.Options{Letter: c.String("paper") == "letter", Pages: c.String("pages")}
+	r.pages = pdf.Options{Letter: c.String("paper") == "letter", Pages: c.String("pages"), Decimal: decimals[c.String("decimal")]}
 	if err := r.check(c); err != nil {
 		return r, err
 	}
@@ -53,6 +53,9 @@ func (r *request) check(c *cli.Context) error {
 		return err
 	}
 	if err := oneOf("paper", c.String("paper"), "a4", "letter"); err != nil {
+		return err
+	}
+	if err := checkDecimal(c); err != nil {
 		return err
 	}
 	return checkEstimator(r.night.Estimator)

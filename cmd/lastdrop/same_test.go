@@ -37,7 +37,7 @@ func TestSameBytesOfAllOutputs(t *testing.T) {
 		dir := t.TempDir()
 		laidOut(t, dir, c.backwards)
 		before := tree(t, filepath.Join(dir, "dumps"))
-		r := try(t, []string{"sweep", filepath.Join(dir, "dumps"), "--into", filepath.Join(dir, "out"), "--workers", c.workers, "--quiet"}, nil)
+		r := try(t, []string{"sweep", filepath.Join(dir, "dumps"), "--into", filepath.Join(dir, "out"), "--workers", c.workers, "--curves", "--quiet"}, nil)
 		if r.exit != 0 {
 			t.Fatalf("%+v: exit %d, %s", c, r.exit, r.stderr)
 		}

@@ -19,7 +19,7 @@ func (p *program) sweepCommand() *command {
 	return &command{
 		name: "sweep", use: "FOLDER… --into OUT",
 		says: "refit every dump of the folders and publish one night",
-		more: "Reads the dumps (*.csv, *.txt, *.tsv, *.dat) in FOLDER and below, refits every endpoint from the raw readings, and writes summary.xlsx, summary.pdf, evaluations.jsonl, unread.jsonl, waiting.jsonl and last-sweep.txt into OUT: all of them or none. The summary stands on stdout. A dump is never changed. " +
+		more: "Reads the dumps (*.csv, *.txt, *.tsv, *.dat) in FOLDER and below, refits every endpoint from the raw readings, and writes summary.xlsx, summary.pdf (with more than 200 pages of runs also summary-2.pdf and so on), evaluations.jsonl, unread.jsonl, waiting.jsonl and last-sweep.txt into OUT: all of them or none. The summary stands on stdout. A dump is never changed. " +
 			"Exit: 0 done, whatever was found; 1 could not finish; 2 usage; 4 --fail-on found something; 6 no dump; 75 another sweep is at work in OUT; 130, 143 stopped.",
 		example: []string{
 			"lastdrop sweep /srv/titrations --into /srv/nights",
@@ -37,7 +37,9 @@ func sweepOptions() []option {
 		{flag: &cli.DurationFlag{Name: "min-age"}, value: "TIME", says: "younger dumps wait for the next sweep; s, m or h stand behind the number", without: "0s", example: "--min-age 15m"},
 		{flag: &cli.StringSliceFlag{Name: "fail-on"}, value: "WHAT", says: "exit with 4 when there is one: unread, disputed, or doubtful (disputed ones too); may be given again", without: "0 whatever was found"},
 		{flag: &cli.StringFlag{Name: "pages", Value: "flagged"}, value: "WHICH", says: "runs that get a page of their own: flagged (disputed and doubtful) or all", without: "flagged"},
+		{flag: &cli.BoolFlag{Name: "curves"}, says: "a sheet Curves in the workbook: readings and computed curve of the runs that have a page, with a chart for the first 50"},
 		{flag: &cli.StringFlag{Name: "paper", Value: "a4"}, value: "SHEET", says: "a4 or letter", without: "a4"},
+		decimalOption("pages and summary"),
 		{flag: &cli.StringFlag{Name: "laboratory"}, value: "NAME", says: "name on every page", without: "none", example: `--laboratory "Quay Road"`},
 		{flag: &cli.IntFlag{Name: "workers"}, value: "N", says: "dumps refitted at the same time, from 1 on; the night is the same with any", without: "one a processor"},
 		{flag: &cli.BoolFlag{Name: "json"}, says: "one JSON object with counts and files on stdout instead of the summary"},
@@ -50,6 +52,7 @@ type request struct {
 	night  night.Options
 	pages  pdf.Options
 	failOn []string
+	curves bool
 	json   bool
 	quiet  bool
 }
@@ -63,14 +66,14 @@ func (p *program) sweep(c *cli.Context) error {
 	if err != nil {
 		return err
 	}
-	var pages pdf.Result
-	r.night.Outputs = outputs(r.pages, &pages)
+	var pages []pdf.Result
+	r.night.Outputs, r.night.Former = outputs(r.pages, r.curves, &pages), pdf.IsFurtherVolume
 	r.night.Log = slog.New(warnings{p: p, quiet: r.quiet})
 	result, err := night.Sweep(c.Context, r.night)
 	if err == nil {
 		tellPages(r.night.Log, pages)
 		p.tellUnread(r, result)
-		if err = p.summary(r, result); err == nil {
+		if err = p.summary(r, result, len(pages)); err == nil {
 			err = found(result.Night, r.failOn)
 		}
 	}
@@ -97,21 +100,25 @@ func (p *program) last(r *request, result *night.Result, err error) error {
 }
 
 // summary prints what a timer mails.
-func (p *program) summary(r *request, result *night.Result) error {
+func (p *program) summary(r *request, result *night.Result, volumes int) error {
 	if r.json || r.quiet {
 		return nil
 	}
-	return terminal.Summary(p.stdout, result.Night, result.Files)
+	return terminal.Summary(p.stdout, result.Night, terminal.SummaryOptions{Files: result.Files, Volumes: volumes, Decimal: r.pages.Decimal})
 }
 
 // tellPages warns of pages that could not be drawn and of signs that were
 // replaced.
-func tellPages(log *slog.Logger, pages pdf.Result) {
-	for _, f := range pages.Failed {
-		log.Warn("a page could not be drawn; one that says so stands in its place", "page", f.Page, "of", f.What, "cause", f.Says)
+func tellPages(log *slog.Logger, volumes []pdf.Result) {
+	var replaced []string
+	for i, pages := range volumes {
+		for _, f := range pages.Failed {
+			log.Warn("a page could not be drawn; one that says so stands in its place", "file", pdf.FileName(i+1), "page", f.Page, "of", f.What, "cause", f.Says)
+		}
+		replaced = append(replaced, pages.Replaced...)
 	}
-	if n := len(pages.Replaced); n > 0 {
-		log.Warn("signs that the font has not were replaced", "texts", n, "first", pages.Replaced[0])
+	if n := len(replaced); n > 0 {
+		log.Warn("signs that the font has not were replaced", "texts", n, "first", replaced[0])
 	}
 }
 

@@ -42,6 +42,30 @@ func NewTicks(from, to float64, most int) Ticks {
 	}
 }
 
+// labelGap parts the numbers of neighbouring ticks of a level axis, mm.
+const labelGap = 1.2
+
+// LevelTicks are NewTicks of a level scale, fewer where their numbers would
+// touch: 10.910 and 10.915 need more room than 10 and 15.
+func (s Scale) LevelTicks(most int, print func(v float64, decimals int) string) Ticks {
+	t := NewTicks(s.From, s.To, most)
+	for n := len(t.Values) - 1; n >= 1 && !s.parted(t, print); n-- {
+		t = NewTicks(s.From, s.To, n)
+	}
+	return t
+}
+
+// parted tells whether the numbers of ticks stand apart.
+func (s Scale) parted(t Ticks, print func(v float64, decimals int) string) bool {
+	for i := 1; i < len(t.Values); i++ {
+		a, b := TextWidth(tickNumber, print(t.Values[i-1], t.Decimals)), TextWidth(tickNumber, print(t.Values[i], t.Decimals))
+		if s.MM(t.Values[i])-s.MM(t.Values[i-1]) < (a+b)/2+labelGap {
+			return false
+		}
+	}
+	return true
+}
+
 // multiples lists k·m·10^power between from and to, with a billionth of the
 // step allowed at the ends; one more than mostTicks at most.
 func multiples(from, to, m float64, power int) []float64 {
@@ -50,7 +74,7 @@ func multiples(from, to, m float64, power int) []float64 {
 	last := math.Floor(to*per/unit + 1e-9)
 	var out []float64
 	for k := first; k <= last && len(out) <= mostTicks; k++ {
-		out = append(out, k*unit/per)
+		out = append(out, k*unit/per+0) // minus zero becomes zero
 	}
 	return out
 }

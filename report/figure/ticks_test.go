@@ -3,6 +3,8 @@ package figure
 import (
 	"math"
 	"slices"
+	"strconv"
+	"strings"
 	"testing"
 )
 
@@ -77,6 +79,34 @@ func TestRounded(t *testing.T) {
 	for _, c := range [][4]float64{{0, 0.83, 0, 1}, {0, 1, 0, 1}, {-3.2, 4.1, -5, 5}} {
 		if from, to := Rounded(c[0], c[1], 2); math.Abs(from-c[2]) > 1e-12 || math.Abs(to-c[3]) > 1e-12 {
 			t.Errorf("Rounded(%g, %g) = %g, %g, want %g, %g", c[0], c[1], from, to, c[2], c[3])
+		}
+	}
+}
+
+// Numbers of a level axis never touch. At 6.5 pt a digit is 1.28 mm wide and a
+// point 0.64 mm (0.556 and 0.278 of the size): "10.90" takes 5.7 mm and a gap,
+// so that ticks 13.3 mm apart stay, ticks 6.7 mm apart become fewer.
+func TestLevelTicksStandApart(t *testing.T) {
+	print := func(v float64, decimals int) string { return strconv.FormatFloat(v, 'f', decimals, 64) }
+	for _, c := range []struct {
+		s    Scale
+		most int
+		want string
+	}{
+		{Scale{10.9, 10.93, 0, 40}, 6, "10.90 10.91 10.92 10.93"},
+		{Scale{10.9, 10.93, 0, 20}, 6, "10.90 10.92"},
+		{Scale{0, 10, 0, 45}, 10, "0 2 4 6 8 10"},
+		{Scale{0, 9, 0, 45}, 10, "0 1 2 3 4 5 6 7 8 9"},
+		{Scale{10.9, 10.93, 0, 3}, 6, "10.90"},
+		{Scale{1, 1, 0, 3}, 6, ""},
+	} {
+		ticks := c.s.LevelTicks(c.most, print)
+		var got []string
+		for _, v := range ticks.Values {
+			got = append(got, print(v, ticks.Decimals))
+		}
+		if strings.Join(got, " ") != c.want {
+			t.Errorf("%+v: got %q, want %q", c.s, strings.Join(got, " "), c.want)
 		}
 	}
 }

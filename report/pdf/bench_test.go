@@ -19,7 +19,7 @@ func BenchmarkRunPage(b *testing.B) {
 	b.ReportAllocs()
 	b.ResetTimer()
 	written := &counter{}
-	res, err := Write(written, n, Options{})
+	res, err := writeAll(written, n, Options{})
 	if err != nil || len(res.Failed) > 0 {
 		b.Fatal(err, res.Failed)
 	}
@@ -34,7 +34,7 @@ func BenchmarkFrontPage(b *testing.B) {
 	}
 	b.ReportAllocs()
 	for b.Loop() {
-		if _, err := Write(io.Discard, n, Options{}); err != nil {
+		if _, err := writeAll(io.Discard, n, Options{}); err != nil {
 			b.Fatal(err)
 		}
 	}
@@ -45,7 +45,7 @@ func BenchmarkSmallPicture(b *testing.B) {
 	n := soundNight(b.N)
 	b.ReportAllocs()
 	b.ResetTimer()
-	if _, err := Write(io.Discard, n, Options{}); err != nil {
+	if _, err := writeAll(io.Discard, n, Options{}); err != nil {
 		b.Fatal(err)
 	}
 }
@@ -54,7 +54,7 @@ func BenchmarkSmallPicture(b *testing.B) {
 func BenchmarkDrawRunPage(b *testing.B) {
 	n := emptyNight()
 	n.Evaluations = []report.Evaluation{overshot()}
-	d, err := newDocument(n, Options{})
+	d, err := firstVolume(n, Options{})
 	if err != nil {
 		b.Fatal(err)
 	}

@@ -58,7 +58,7 @@ func (r *runPage) drawMain(s *figure.Sheet, p *report.Picture, edge float64) {
 	fromML, toML := volumeRange(r.e, p)
 	b := valueRange(p, fromML, toML)
 	lo, hi := padded(b.from, b.to, bottomShare(p), 0.05)
-	a := figure.NewAxes(s, area, [2]float64{fromML, toML}, [2]float64{lo, hi}, report.Fixed)
+	a := figure.NewAxes(s, area, [2]float64{fromML, toML}, [2]float64{lo, hi}, r.d.mark.Fixed)
 	t := figure.NewTicks(b.from-0.02*(b.to-b.from), hi, 7)
 	r.drawBands(a, area.Bottom+2*figure.LaneMM)
 	a.GridY(t)
@@ -69,13 +69,13 @@ func (r *runPage) drawMain(s *figure.Sheet, p *report.Picture, edge float64) {
 	r.drawCurve(a, p)
 	r.drawReadings(a, p)
 	r.drawDrops(a, p)
-	a.Rail(rail(r.e, true))
+	a.Rail(r.rail(true))
 	r.drawLabels(a, p, title)
 	if len(p.Residuals) > 0 {
 		r.drawResiduals(s, p, figure.Box{Left: plotLeft, Top: axisAt - 1 - stemHeight, Right: edge, Bottom: axisAt - 1}, a)
 	}
-	a.Bottom(axisAt, figure.NewTicks(fromML, toML, int((edge-plotLeft)/11)))
-	s.TextRight(edge, r.figFoot, scaleStyle, figure.Shorten(scaleStyle, p.XName, edge-plotLeft))
+	a.Bottom(axisAt, a.X.LevelTicks(int((edge-plotLeft)/11), a.Print))
+	s.TextRight(edge, r.figFoot, scaleStyle, figure.Shorten(scaleStyle, r.d.mark.Axis(r.e), edge-plotLeft))
 }
 
 // bottomShare leaves white under the data where a derivative stands on the
@@ -196,22 +196,22 @@ func (r *runPage) drawFar(a *figure.Axes, q figure.Point) {
 	}
 	a.Sheet.Filled(shape, x, y, 2, figure.Warm)
 	a.Room.TakeBox(figure.Box{Left: x - 1.2, Top: y - 1.2, Right: x + 1.2, Bottom: y + 1.2})
-	a.Label(noteStyle.In(figure.Black), printReading(r.e, q.Y), figure.Point{X: x, Y: y}, 12)
+	a.Label(noteStyle.In(figure.Black), r.printReading(q.Y), figure.Point{X: x, Y: y}, 12)
 }
 
 // printReading is the printed form of a reading: as pH meters, millivolt and
 // conductivity meters commonly show it.
-func printReading(e *report.Evaluation, v float64) string {
-	value, unit := splitReading(e, v)
+func (r *runPage) printReading(v float64) string {
+	value, unit := splitReading(r.e, v, r.d.mark)
 	if unit == "pH" {
 		return "pH " + value
 	}
 	return value + " " + unit
 }
 
-func splitReading(e *report.Evaluation, v float64) (value, unit string) {
+func splitReading(e *report.Evaluation, v float64, m report.Decimal) (value, unit string) {
 	unit = unitOf(e)
-	return report.Fixed(v, map[string]int{"pH": 2, "mV": 1, "mS/cm": 3}[unit]), unit
+	return m.Fixed(v, map[string]int{"pH": 2, "mV": 1, "mS/cm": 3}[unit]), unit
 }
 
 // drawDrops joins endpoints and curve with the rail.
@@ -263,24 +263,25 @@ func drawnAt(p *report.Picture, v float64) (y float64, ok bool) {
 }
 
 // rail is the rail of a run; figures stand in it only under large plots.
-func rail(e *report.Evaluation, names bool) figure.Rail {
-	r := figure.Rail{UpperNone: "no endpoint", LowerNone: "none indicated"}
+func (r *runPage) rail(names bool) figure.Rail {
+	e, m := r.e, r.d.mark
+	out := figure.Rail{UpperNone: "no endpoint", LowerNone: "none indicated"}
 	if names {
-		r.UpperName, r.LowerName = "refit", "indicated"
+		out.UpperName, out.LowerName = "refit", "indicated"
 	}
 	for i := range e.Endpoints {
 		p := &e.Endpoints[i]
-		r.Upper = append(r.Upper, figure.Place{
-			At: p.VolumeML, Shape: kindShape(p.Kind), Label: p.Volume(),
+		out.Upper = append(out.Upper, figure.Place{
+			At: p.VolumeML, Shape: kindShape(p.Kind), Label: m.Of(p.Volume()),
 			Bracket: p.BracketML[1] > p.BracketML[0], From: p.BracketML[0], To: p.BracketML[1],
 			Bar: true, Low: p.Low95ML, High: p.High95ML,
 		})
 	}
 	for k := range e.Indicated {
 		i := &e.Indicated[k]
-		r.Lower = append(r.Lower, figure.Place{At: i.VolumeML, Shape: kindShape(i.Kind), Label: i.Volume()})
+		out.Lower = append(out.Lower, figure.Place{At: i.VolumeML, Shape: kindShape(i.Kind), Label: m.Of(i.Volume())})
 	}
-	return r
+	return out
 }
 
 // drawLabels names bracket, derivative, arms and raw readings where they
@@ -299,14 +300,14 @@ func (r *runPage) drawLabels(a *figure.Axes, p *report.Picture, titleEnd float64
 		q := &r.e.Endpoints[i]
 		if same := i > 0 && q.BracketML == r.e.Endpoints[i-1].BracketML; q.BracketML[1] > q.BracketML[0] && !same {
 			edge := figure.Point{X: a.X.MM(q.BracketML[0]), Y: a.Area.Top + 2}
-			if !a.Label(noteStyle, bracketText(q), edge, 30) && i == 0 {
-				homeless = append(homeless, bracketText(q))
+			if !a.Label(noteStyle, r.bracketText(q), edge, 30) && i == 0 {
+				homeless = append(homeless, r.bracketText(q))
 			}
 		}
 	}
-	if len(p.Slope) > 0 && p.SlopeName != "" {
-		if !a.Label(blue, p.SlopeName, slopePeak(a, p), 45) {
-			homeless = append(homeless, p.SlopeName)
+	if slope := r.d.mark.Says(p.SlopeName); len(p.Slope) > 0 && slope != "" {
+		if !a.Label(blue, slope, slopePeak(a, p), 45) {
+			homeless = append(homeless, slope)
 		}
 	}
 	if at, ok := rawLabel(a, p); ok {
@@ -318,6 +319,10 @@ func (r *runPage) drawLabels(a *figure.Axes, p *report.Picture, titleEnd float64
 			x = a.Sheet.TextRight(x, r.figTop, noteStyle, text) - 4
 		}
 	}
+}
+
+func (r *runPage) bracketText(q *report.Endpoint) string {
+	return "bracket " + r.d.mark.Of(q.Bracket()) + " mL"
 }
 
 // slopePeak is where the derivative's silhouette is highest.
@@ -357,7 +362,7 @@ func (r *runPage) drawResiduals(s *figure.Sheet, p *report.Picture, area figure.
 	if !(most > 0) && !math.IsNaN(most) {
 		most = 1
 	}
-	a := figure.NewAxes(s, area, [2]float64{curve.X.From, curve.X.To}, [2]float64{-1.15 * most, 1.15 * most}, report.Fixed)
+	a := figure.NewAxes(s, area, [2]float64{curve.X.From, curve.X.To}, [2]float64{-1.15 * most, 1.15 * most}, r.d.mark.Fixed)
 	if p.ResidualBand > 0 {
 		a.BandY(-p.ResidualBand, p.ResidualBand, figure.Band)
 	}

@@ -15,16 +15,16 @@ var (
 )
 
 // endpointRows is a list of several endpoints in place of the four figures.
-func endpointRows(e *report.Evaluation) item {
+func endpointRows(e *report.Evaluation, m report.Decimal) item {
 	n := min(len(e.Endpoints), 6)
-	row := endpointRow{number: headStyle.As(figure.Medium), pitch: 6.8, stacked: true}
+	row := endpointRow{number: headStyle.As(figure.Medium), pitch: 6.8, stacked: true, mark: m}
 	if n > 2 {
-		row = endpointRow{number: leadStyle.As(figure.Medium), pitch: 4.8}
+		row = endpointRow{number: leadStyle.As(figure.Medium), pitch: 4.8, mark: m}
 	}
 	h := 4.9 + row.pitch*float64(n) + 1
 	return item{height: h, draw: func(s *figure.Sheet, y float64) {
 		defer s.Block("endpoints", figure.Box{Left: left, Top: y, Right: right, Bottom: y + h})()
-		doubt := doubtFigure(e)
+		doubt := doubtFigure(e, m)
 		for i, t := range [...]struct {
 			text string
 			ink  figure.Ink
@@ -61,22 +61,23 @@ type endpointRow struct {
 	number  figure.Style
 	pitch   float64
 	stacked bool
+	mark    report.Decimal
 }
 
 func (r endpointRow) draw(s *figure.Sheet, e *report.Evaluation, k int, y float64) {
 	const shape = 3.4 // room for the mark of the kind
-	p := &e.Endpoints[k]
+	p, m := &e.Endpoints[k], r.mark
 	mark := y - 0.36*figure.MM(r.number.SizePt)
 	s.Filled(kindShape(p.Kind), endpointX[0]+1.1, mark, 2.2, figure.Blue)
-	r.figure(s, endpointX[0]+shape, y, figure.Blue, p.Volume(), p.Kind, p.Interval())
+	r.figure(s, endpointX[0]+shape, y, figure.Blue, m.Of(p.Volume()), p.Kind, m.Of(p.Interval()))
 	if i := indicatedOf(e, p, k); i != nil {
 		s.Open(kindShape(i.Kind), endpointX[1]+1.1, mark, 2.2, figure.Black)
-		r.figure(s, endpointX[1]+shape, y, figure.Black, i.Volume(), i.Kind, "")
+		r.figure(s, endpointX[1]+shape, y, figure.Black, m.Of(i.Volume()), i.Kind, "")
 	} else {
 		r.figure(s, endpointX[1]+shape, y, figure.Black, report.Dash, "", "")
 	}
 	if p.Differs != nil {
-		r.figure(s, endpointX[2], y, figure.Black, p.Difference(), p.DifferencePercent()+" %", "limit "+p.DifferenceLimit())
+		r.figure(s, endpointX[2], y, figure.Black, m.Of(p.Difference()), m.Of(p.DifferencePercent())+" %", "limit "+m.Of(p.DifferenceLimit()))
 	} else {
 		r.figure(s, endpointX[2], y, figure.Black, report.Dash, "", "")
 	}

@@ -55,8 +55,8 @@ func (d *document) foot() float64    { return d.footTop() - 3 }
 // reading.
 func (d *document) frame(s *figure.Sheet, number int, identity, basis string) (finish func()) {
 	pageText := "page " + whole(number) + " of " + whole(len(d.pages))
-	if d.volume > 0 && d.volumes > 1 {
-		pageText += ", volume " + whole(d.volume) + " of " + whole(d.volumes)
+	if n := len(d.volumes); n > 1 {
+		pageText += ", volume " + whole(d.volume) + " of " + whole(n)
 	}
 	edge := right - figure.TextWidth(bodyStyle, pageText)
 	if identity != "" {

@@ -12,7 +12,9 @@ import (
 func (d *document) planFront() {
 	f := newFlow(17, 24, d.foot())
 	if d.volume > 1 {
-		d.pages = append(d.pages, page{what: "front page", draw: d.drawVolumeFront, bookmarks: []paper.Bookmark{{Text: "volume " + whole(d.volume)}}})
+		f.put(d.volumeItem())
+		f.addSection(6, d.contentsSection())
+		d.addFront(f, "volume "+whole(d.volume))
 		return
 	}
 	f.put(d.headlineItem())
@@ -22,49 +24,50 @@ func (d *document) planFront() {
 	f.addSection(air, d.proceduresSection())
 	at := f.addSection(air, d.unreadSection())
 	if at >= 0 {
-		d.unreadPage = at + 1
+		d.unreadAt = stretch{1, at + 1, 1, at + 1}
 	}
-	for i, items := range f.pages {
-		p := page{what: "front page"}
-		if i == 0 {
-			p.bookmarks = []paper.Bookmark{{Text: "night, front page"}}
-		}
-		if i == at {
-			p.bookmarks = append(p.bookmarks, paper.Bookmark{Text: "unread"})
-		}
-		p.draw = func(s *figure.Sheet, number int) {
-			defer d.frame(s, number, "", "")()
-			drawItems(s, items, left)
-		}
-		d.pages = append(d.pages, p)
+	d.addFront(f, "night, front page")
+	if at >= 0 {
+		d.pages[at].bookmarks = append(d.pages[at].bookmarks, paper.Bookmark{Text: "unread"})
 	}
 }
 
-// drawVolumeFront is the first page of a further volume.
-func (d *document) drawVolumeFront(s *figure.Sheet, number int) {
-	defer d.frame(s, number, "", "")()
-	s.Text(left, 28, headStyle.As(figure.Bold), "Volume "+whole(d.volume)+" of "+whole(d.volumes)+": further runs of the night.")
-	s.Text(left, 35, leadStyle, "The headline, the list and the counts of the night stand in volume 1.")
+// addFront adds the pages of a flow as the front of a volume.
+func (d *document) addFront(f *flow, bookmark string) {
+	for i, items := range f.pages {
+		p := page{what: "front page", draw: func(s *figure.Sheet, number int) {
+			defer d.frame(s, number, "", "")()
+			drawItems(s, items, left)
+		}}
+		if i == 0 {
+			p.bookmarks = []paper.Bookmark{{Text: bookmark}}
+		}
+		d.pages = append(d.pages, p)
+	}
 }
 
 // headline returns what happened, what to do and the next command.
 func (d *document) headline() (happened, do, next string) {
 	happened, do = d.n.Headline()
 	do = strings.TrimSpace(do + " " + d.besides())
-	if len(d.large) == 0 {
+	if len(d.urgent) == 0 {
 		return happened, do, ""
 	}
-	first := &d.n.Evaluations[d.large[0]]
+	first := &d.n.Evaluations[d.urgent[0]]
 	return happened, do + " Begin with " + name(first) + ".", lookAt(first)
 }
 
 // besides tells what else a reader must know of the night. Dumps that wait are
 // not told here: they change with the clock, and published pages do not.
 func (d *document) besides() string {
+	var said []string
 	if d.n.Estimator != "" {
-		return "The estimator " + d.n.Estimator + " was asked for by name."
+		said = append(said, "The estimator "+d.n.Estimator+" was asked for by name.")
 	}
-	return ""
+	if n := len(d.volumes); n > 1 {
+		said = append(said, "The pages fill "+report.Number(n)+" volumes: this one"+furtherNames(n)+".")
+	}
+	return strings.Join(said, " ")
 }
 
 // lookAt is the command that shows the run's dump, "" for a run without one.
@@ -137,43 +140,33 @@ func (d *document) totals() [4]total {
 		{mark: figure.Missing, count: len(n.Unread), word: "unread", means: "not read, no result"},
 	}
 	for i, v := range [...]report.Verdict{report.VerdictDisputed, report.VerdictDoubtful, report.VerdictSound} {
-		out[i].where = pageRange(d.runPages(v))
+		var at stretch
+		for _, k := range d.urgent {
+			if d.n.Evaluations[k].Verdict == v {
+				at = at.join(d.runAt[k])
+			}
+		}
+		out[i].where = d.where(at)
 	}
 	if out[2].where == "" {
-		out[2].where = pageRange(d.smallPages[0], d.smallPages[1])
+		out[2].where = d.where(d.smallAt)
 	}
-	if d.unreadPage == 1 {
+	out[3].where = d.where(d.unreadAt)
+	if d.unreadAt.page == 1 {
 		out[3].where = "below"
-	} else if d.unreadPage > 1 {
-		out[3].where = "page " + whole(d.unreadPage)
 	}
 	return out
 }
 
-// runPages returns the first and last large page of a verdict, 0 for none.
-func (d *document) runPages(v report.Verdict) (from, to int) {
-	for i, k := range d.large {
-		if d.n.Evaluations[k].Verdict != v {
-			continue
-		}
-		if from == 0 {
-			from = d.runPage[k]
-		}
-		to = len(d.pages)
-		if i+1 < len(d.large) {
-			to = d.runPage[d.large[i+1]] - 1
-		} else if d.smallPages[0] > 0 {
-			to = d.smallPages[0] - 1
-		}
-	}
-	return from, to
-}
-
 func (d *document) totalsItem() item {
-	return item{height: 17, draw: func(s *figure.Sheet, y float64) {
+	h := 17.0
+	if len(d.volumes) > 1 { // a place there takes two lines
+		h += noteLead
+	}
+	return item{height: h, draw: func(s *figure.Sheet, y float64) {
 		for i, t := range d.totals() {
 			x := left + 45*float64(i)
-			end := s.Block("total", figure.Box{Left: x, Top: y, Right: x + 41, Bottom: y + 17})
+			end := s.Block("total", figure.Box{Left: x, Top: y, Right: x + 41, Bottom: y + h})
 			ink := rule(figure.Black, 0.4)
 			if i == 0 && t.count > 0 {
 				ink.WidthPt = 1
@@ -188,7 +181,8 @@ func (d *document) totalsItem() item {
 			s.Text(to+1.5, y+9.8, word, t.word)
 			s.Text(x+9, y+13.4, noteStyle, t.means)
 			if t.count > 0 {
-				s.Text(x+9, y+16.5, noteStyle.In(figure.Blue), t.where)
+				st := noteStyle.In(figure.Blue)
+				paragraph(s, x+9, y+16.5, noteLead, st, figure.WrapAtMost(st, t.where, 32, 2))
 			}
 			end()
 		}

@@ -26,10 +26,10 @@ func (d *document) listSection() section {
 	half := d.halfScale()
 	sec := section{most: listRows, head: d.listHead(), foot: item{height: 6.5, draw: func(s *figure.Sheet, y float64) {
 		s.TextRight(reasonEnd, y+3.4, noteStyle, "like kinds; grey: agreement limit; bar: 95 % from readings")
-		d.lane(s, half).Axis(y+0.4, laneTicks(half))
+		d.laneAxis(s, half, y)
 	}}}
 	again := false
-	for _, i := range d.large {
+	for _, i := range d.urgent {
 		e := &d.n.Evaluations[i]
 		if e.Verdict == report.VerdictSound {
 			continue
@@ -49,10 +49,14 @@ func (d *document) listHead() item {
 
 // lane is the scale of differences that the rows of the front page share.
 func (d *document) lane(s *figure.Sheet, half float64) *figure.Lane {
-	return figure.NewLane(s, scaleFrom, scaleTo, -half, half, report.Fixed)
+	return figure.NewLane(s, scaleFrom, scaleTo, -half, half, d.mark.Fixed)
 }
 
-func laneTicks(half float64) figure.Ticks { return figure.NewTicks(-half, half, 5) }
+// laneAxis draws that scale with its numbers.
+func (d *document) laneAxis(s *figure.Sheet, half, y float64) {
+	l := d.lane(s, half)
+	l.Axis(y+0.4, l.X.LevelTicks(5, l.Print))
+}
 
 // halfScale is how far the scale of differences reaches to each side, in %:
 // far enough for all but the quarter that lie furthest out, and for twice the
@@ -126,7 +130,7 @@ func noDifference(e *report.Evaluation) string {
 func (d *document) listRow(i int, half float64, firstOf bool) item {
 	e := &d.n.Evaluations[i]
 	sample := sampleLines(e)
-	reason := reasonLines(e)
+	reason := reasonLines(e, d.mark)
 	lines := max(len(sample)+1, len(reason)+1)
 	h := 2.1 + bodyLead*float64(lines)
 	return item{height: h, draw: func(s *figure.Sheet, y float64) {
@@ -155,12 +159,12 @@ func sampleLines(e *report.Evaluation) []string {
 }
 
 // reasonLines is the sentence of the flag that makes the verdict.
-func reasonLines(e *report.Evaluation) []string {
+func reasonLines(e *report.Evaluation, m report.Decimal) []string {
 	f := heaviest(e)
 	if f == nil {
 		return nil
 	}
-	return figure.WrapAtMost(bodyStyle, f.Says, reasonEnd-reasonX, 3)
+	return figure.WrapAtMost(bodyStyle, m.Says(f.Says), reasonEnd-reasonX, 3)
 }
 
 func (d *document) drawRow(s *figure.Sheet, e *report.Evaluation, y float64, sample, reason []string) {
@@ -178,15 +182,19 @@ func (d *document) drawRow(s *figure.Sheet, e *report.Evaluation, y float64, sam
 	paragraph(s, reasonX, base+bodyLead, bodyLead, bodyStyle, reason)
 }
 
-// drawPageLink leads to the page of a run, where it has one.
+// drawPageLink leads to the page of a run, where it has one; of another volume
+// it can only tell.
 func (d *document) drawPageLink(s *figure.Sheet, i int, y float64) {
-	page := d.runPage[i]
-	if page == 0 {
-		return
+	at, base, st := d.runAt[i], y+3.9, noteStyle.In(figure.Blue)
+	switch at.volume {
+	case 0:
+	case d.volume:
+		from := s.TextRight(right, base, st, "page "+whole(at.page))
+		s.Link(figure.Box{Left: from, Top: base - 2.5, Right: right, Bottom: base + 1}, at.page)
+	default:
+		s.TextRight(right, base, st, "volume "+whole(at.volume))
+		s.TextRight(right, base+noteLead, st, "page "+whole(at.page))
 	}
-	base := y + 3.9
-	from := s.TextRight(right, base, noteStyle.In(figure.Blue), "page "+whole(page))
-	s.Link(figure.Box{Left: from, Top: base - 2.5, Right: right, Bottom: base + 1}, page)
 }
 
 func procedureName(e *report.Evaluation) string {
@@ -215,7 +223,7 @@ func (d *document) drawDifference(s *figure.Sheet, e *report.Evaluation, half, y
 		l.Bar(low, high, base-0.9, rule(figure.Blue, 1.1))
 	}
 	l.Point(x.Percent, base-0.9, figure.Disc, 2, figure.Blue, false)
-	value := report.Signed(x.Percent, 2)
+	value := d.mark.Signed(x.Percent, 2)
 	s.TextRight(valueEnd, base, noteStyle.In(figure.Black), value)
 	if len(e.Endpoints) > 1 {
 		s.TextRight(valueEnd, base+noteLead, noteStyle, "endpoint "+whole(p.N))

@@ -19,7 +19,7 @@ func TestLook(t *testing.T) {
 	for name, c := range nights() {
 		for sheet, letter := range map[string]bool{"a4": false, "letter": true} {
 			var b bytes.Buffer
-			res, err := Write(&b, c.night, Options{Letter: letter, Pages: c.pages})
+			res, err := writeAll(&b, c.night, Options{Letter: letter, Pages: c.pages})
 			if err != nil {
 				t.Fatal(name, err)
 			}

@@ -80,7 +80,7 @@ func (d *document) proceduresSection() section {
 		most = max(most, len(g.runs))
 	}
 	sec := section{head: item{height: 5.6, draw: procedureHead}, foot: item{height: 6.5, draw: func(s *figure.Sheet, y float64) {
-		d.lane(s, half).Axis(y+0.4, laneTicks(half))
+		d.laneAxis(s, half, y)
 		s.TextRight(138, y+3.4, noteStyle, "one stroke a run; right: the median")
 	}}}
 	for _, g := range groups {
@@ -170,7 +170,7 @@ func (d *document) drawStrip(s *figure.Sheet, g *group, half, y float64) {
 	}
 	text, st := report.Dash, noteStyle.In(figure.Black)
 	if m, ok := median(all); ok {
-		text = report.Signed(m, 2)
+		text = d.mark.Signed(m, 2)
 	}
 	s.TextRight(valueEnd, y+3.4, st, text)
 }

@@ -18,20 +18,17 @@ import (
 	"lastdrop/report/pdf/paper"
 )
 
-// VolumePages is how many large run pages a volume holds.
-const VolumePages = 200
-
-// Options choose the sheet and which runs get a page of their own.
+// Options choose the sheet, which runs get a page of their own, and the mark
+// in figures.
 type Options struct {
-	Letter bool   // US Letter; A4 without
-	Pages  string // "flagged" (also when ""): disputed and doubtful runs; "all": every run
-	Volume int    // which volume to write, from 1; 0 writes everything into one document
+	Letter  bool   // US Letter; A4 without
+	Pages   string // "flagged" (also when ""): disputed and doubtful runs; "all": every run
+	Decimal report.Decimal
 }
 
 // Result tells what was written.
 type Result struct {
 	Pages    int
-	Volumes  int      // that the night fills at VolumePages large pages each
 	Failed   []Failed // pages that could not be drawn; each is replaced by one that says so
 	Replaced []string // lines in which characters stand replaced by a visible sign
 }
@@ -50,17 +47,14 @@ func (e *OptionError) Error() string {
 	return fmt.Sprintf("%s: %q is not known; use %s", e.Option, e.Value, e.Want)
 }
 
-// Write lays out the night and writes one PDF document. A page that cannot be
-// drawn does not stop it: see Result.Failed. Nothing is written when it
-// returns an OptionError.
-func Write(w io.Writer, n *report.Night, o Options) (Result, error) {
-	d, err := newDocument(n, o)
-	if err != nil {
-		return Result{}, err
-	}
-	file := paper.New(d.width, d.height, about(n))
-	res := Result{Volumes: d.volumes}
-	s := figure.NewSheet(d.width, d.height)
+// Write lays out one volume of the book, from 1, and writes it as one PDF
+// document. A page that cannot be drawn does not stop it: see Result.Failed.
+// Volumes may be written at the same time.
+func (b *Book) Write(w io.Writer, volume int) (Result, error) {
+	d := b.volumes[volume-1]
+	file := paper.New(b.width, b.height, d.about())
+	res := Result{Pages: len(d.pages)}
+	s := figure.NewSheet(b.width, b.height)
 	for i := range d.pages {
 		p := &d.pages[i]
 		if says := attempt(s, func() { p.draw(s, i+1) }); says != "" {
@@ -74,15 +68,18 @@ func Write(w io.Writer, n *report.Night, o Options) (Result, error) {
 		}
 		res.Replaced = append(res.Replaced, s.Replaced...)
 	}
-	res.Pages = len(d.pages)
-	_, err = file.WriteTo(w)
+	_, err := file.WriteTo(w)
 	return res, err
 }
 
-func about(n *report.Night) paper.About {
+func (d *document) about() paper.About {
+	n := d.n
 	title := "Night of " + day(n.Date)
 	if n.Laboratory != "" {
 		title += ", " + n.Laboratory
+	}
+	if len(d.volumes) > 1 {
+		title += ", volume " + whole(d.volume)
 	}
 	return paper.About{Title: title, Creator: "lastdrop " + n.Lastdrop, Subject: report.Caution, Date: n.Date}
 }

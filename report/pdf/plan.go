@@ -8,20 +8,13 @@ import (
 	"lastdrop/report/pdf/paper"
 )
 
-// document is a night being laid out. All pages are planned before the first
-// is drawn, so that each can say where the others are.
+// document is one volume being laid out. All pages of all volumes are planned
+// before the first is drawn, so that each can say where the others are.
 type document struct {
-	n             *report.Night
-	width, height float64 // of the sheet, mm
-	figureLess    float64 // mm that figures are lower than on A4
-	pages         []page
-	runPage       []int // page of each evaluation's large page, 0 for none
-	large         []int // evaluations with a large page, most urgent first
-	small         []int // sound runs with a small picture
-	smallPages    [2]int
-	unreadPage    int
-	volume        int
-	volumes       int
+	*Book
+	volume int   // from 1
+	large  []int // evaluations with a large page here, most urgent first
+	pages  []page
 }
 
 // page is one page to be drawn.
@@ -32,38 +25,20 @@ type page struct {
 	draw      func(s *figure.Sheet, number int)
 }
 
-func newDocument(n *report.Night, o Options) (*document, error) {
-	if o.Pages != "" && o.Pages != "flagged" && o.Pages != "all" {
-		return nil, &OptionError{Option: "pages", Value: o.Pages, Want: "flagged or all"}
-	}
-	d := &document{n: n, width: 210, height: 297, runPage: make([]int, len(n.Evaluations)), volume: o.Volume}
-	if o.Letter {
-		d.width, d.height, d.figureLess = 215.9, 279.4, 18
-	}
-	d.choose(o.Pages == "all")
-	if err := d.cut(o.Volume); err != nil {
-		return nil, err
-	}
-	d.planFront()
-	d.planRuns()
-	d.planSmall()
-	return d, nil
-}
-
 // choose sorts the runs that get a large page by urgency, and the sound ones
 // that get a small picture by procedure.
-func (d *document) choose(all bool) {
+func (d *Book) choose(all bool) {
 	for i := range d.n.Evaluations {
 		e := &d.n.Evaluations[i]
 		if all || e.Verdict != report.VerdictSound {
-			d.large = append(d.large, i)
+			d.urgent = append(d.urgent, i)
 		}
 		if e.Verdict == report.VerdictSound && e.Picture != nil {
 			d.small = append(d.small, i)
 		}
 	}
-	sort.SliceStable(d.large, func(a, b int) bool {
-		x, y := &d.n.Evaluations[d.large[a]], &d.n.Evaluations[d.large[b]]
+	sort.SliceStable(d.urgent, func(a, b int) bool {
+		x, y := &d.n.Evaluations[d.urgent[a]], &d.n.Evaluations[d.urgent[b]]
 		if u, v := urgency(x.Verdict), urgency(y.Verdict); u != v {
 			return u > v
 		}
@@ -76,24 +51,6 @@ func (d *document) choose(all bool) {
 		}
 		return x.Signal < y.Signal
 	})
-}
-
-// cut keeps the large pages of one volume; volume 1 has the front and the
-// small pictures as well.
-func (d *document) cut(volume int) error {
-	d.volumes = max(1, (len(d.large)+VolumePages-1)/VolumePages)
-	if volume < 0 || volume > d.volumes {
-		return &OptionError{Option: "volume", Value: whole(volume), Want: "1 to " + whole(d.volumes)}
-	}
-	if volume == 0 {
-		return nil
-	}
-	from := min((volume-1)*VolumePages, len(d.large))
-	d.large = d.large[from:min(from+VolumePages, len(d.large))]
-	if volume > 1 {
-		d.small = nil
-	}
-	return nil
 }
 
 // urgency ranks verdicts; an unknown one counts as disputed.
@@ -126,12 +83,13 @@ func concern(e *report.Evaluation) int {
 }
 
 // planRuns adds the large pages, with a bookmark before each verdict.
-func (d *document) planRuns() {
+func (d *document) planRuns(runs []*runPage) {
 	verdict := report.Verdict("")
-	for _, i := range d.large {
-		e := &d.n.Evaluations[i]
-		r := newRunPage(d, e)
-		d.runPage[i] = len(d.pages) + 1
+	for k, i := range d.large {
+		e, r := &d.n.Evaluations[i], runs[k]
+		r.d = d
+		first := len(d.pages) + 1
+		d.runAt[i] = stretch{d.volume, first, d.volume, first + r.parts() - 1}
 		marks := []paper.Bookmark{{Text: runBookmark(e), Level: 1}}
 		if e.Verdict != verdict {
 			verdict = e.Verdict

@@ -99,23 +99,6 @@ func volumeRange(e *report.Evaluation, p *report.Picture) (from, to float64) {
 	return from, to + 0.005*(to-from)
 }
 
-// bracketDecimals are those that the two volumes were read with: as many as
-// both need, at most 4.
-func bracketDecimals(b [2]float64) int {
-	for d := 1; d < 4; d++ {
-		p := math.Pow10(d)
-		if math.Abs(b[0]*p-math.Round(b[0]*p)) < 1e-6*p && math.Abs(b[1]*p-math.Round(b[1]*p)) < 1e-6*p {
-			return d
-		}
-	}
-	return 4
-}
-
-func bracketText(p *report.Endpoint) string {
-	d := bracketDecimals(p.BracketML)
-	return "bracket " + report.Fixed(p.BracketML[0], d) + " to " + report.Fixed(p.BracketML[1], d) + " mL"
-}
-
 // at reads a drawn curve at a volume: the straight line between its points.
 // It places lines on paper and is never printed.
 func at(curve []report.XY, v float64) (y float64, ok bool) {

@@ -44,26 +44,26 @@ const (
 )
 
 func newRunPage(d *document, e *report.Evaluation) *runPage {
-	r := &runPage{d: d, e: e, head: newRunHead(e)}
+	r := &runPage{d: d, e: e, head: newRunHead(e, d.mark)}
 	y := 43.4 + leadLead*float64(max(len(r.head.do)-1, 0))
 	if len(r.head.do) == 0 {
 		y -= 5
 	}
 	r.figTop = y + 6 + r.head.figures.height + 4.5
 	r.figFoot = r.figTop + figureHeight - d.figureLess
-	r.why, r.facts = whyStrips(e), factStrips(e)
+	r.why, r.facts = whyStrips(e, d.mark), factStrips(e, d.mark)
 	shorter := &r.why
 	if height(r.facts) < height(r.why) {
 		shorter = &r.facts
 	}
 	(*shorter)[len(*shorter)-1].white = 2.2
-	*shorter = append(*shorter, refitStrips(e)...)
+	*shorter = append(*shorter, refitStrips(e, d.mark)...)
 	r.cut()
 	return r
 }
 
-func newRunHead(e *report.Evaluation) runHead {
-	h := runHead{verdict: string(e.Verdict), headline: report.SoundMeans, figures: figuresItem(e)}
+func newRunHead(e *report.Evaluation, m report.Decimal) runHead {
+	h := runHead{verdict: string(e.Verdict), headline: report.SoundMeans, figures: figuresItem(e, m)}
 	if f := heaviest(e); f != nil && e.Verdict != report.VerdictSound {
 		w, _ := report.Words(f.Flag)
 		h.headline = w.Headline
@@ -162,12 +162,12 @@ func (r *runPage) drawHead(s *figure.Sheet) {
 }
 
 // figuresItem are the four large figures of a run, or one row an endpoint.
-func figuresItem(e *report.Evaluation) item {
+func figuresItem(e *report.Evaluation, m report.Decimal) item {
 	if len(e.Endpoints) > 1 {
-		return endpointRows(e)
+		return endpointRows(e, m)
 	}
 	return item{height: 16.4, draw: func(s *figure.Sheet, y float64) {
-		for i, b := range bigFigures(e) {
+		for i, b := range bigFigures(e, m) {
 			b.draw(s, left+45*float64(i), y)
 		}
 	}}
@@ -209,18 +209,18 @@ func (b bigFigure) draw(s *figure.Sheet, x, y float64) {
 }
 
 // bigFigures of a run with one endpoint or none.
-func bigFigures(e *report.Evaluation) [4]bigFigure {
+func bigFigures(e *report.Evaluation, m report.Decimal) [4]bigFigure {
 	refit := bigFigure{label: "refit", value: report.Dash, note: "no endpoint found", owner: figure.Blue, unit: "mL"}
 	indicated := bigFigure{label: "indicated", value: report.Dash, note: "the instrument wrote none", owner: figure.Black, unit: "mL"}
 	apart := bigFigure{label: "refit − indicated", value: report.Dash, note: "nothing to compare", owner: figure.Black, unit: "mL"}
 	var p *report.Endpoint
 	if len(e.Endpoints) > 0 {
 		p = &e.Endpoints[0]
-		refit.label, refit.value = "refit, "+p.Kind, p.Volume()
-		refit.note = intervalNote(p, 41)
+		refit.label, refit.value = "refit, "+p.Kind, m.Of(p.Volume())
+		refit.note = intervalNote(m.Of(p.Interval()), 41)
 	}
 	if i := indicatedOf(e, p, 0); i != nil {
-		indicated.label, indicated.value = "indicated, "+i.Kind, i.Volume()
+		indicated.label, indicated.value = "indicated, "+i.Kind, m.Of(i.Volume())
 		indicated.note = "as the instrument wrote it"
 		if i.Line > 0 {
 			indicated.note += ", line " + whole(i.Line)
@@ -234,23 +234,23 @@ func bigFigures(e *report.Evaluation) [4]bigFigure {
 	}
 	if p != nil && p.Differs != nil {
 		apart.label += ", " + p.Differs.Kind
-		apart.value, apart.note = p.Difference(), apartNote(p)
+		apart.value, apart.note = m.Of(p.Difference()), apartNote(p, m)
 	}
-	return [4]bigFigure{refit, indicated, apart, doubtFigure(e)}
+	return [4]bigFigure{refit, indicated, apart, doubtFigure(e, m)}
 }
 
 // intervalNote says what the interval is made of: the readings only, no
 // burette.
-func intervalNote(p *report.Endpoint, width float64) string {
-	note := "95 % from readings: " + p.Interval()
+func intervalNote(interval string, width float64) string {
+	note := "95 % from readings: " + interval
 	if figure.TextWidth(noteStyle, note) > width {
-		note = "95 %, readings: " + p.Interval()
+		note = "95 %, readings: " + interval
 	}
 	return note
 }
 
-func apartNote(p *report.Endpoint) string {
-	return p.DifferencePercent() + " % of refit; limit " + p.DifferenceLimit() + " mL"
+func apartNote(p *report.Endpoint, m report.Decimal) string {
+	return m.Of(p.DifferencePercent()) + " % of refit; limit " + m.Of(p.DifferenceLimit()) + " mL"
 }
 
 // indicatedOf returns the indicated endpoint that belongs to the k-th refitted
@@ -273,14 +273,14 @@ func indicatedOf(e *report.Evaluation, p *report.Endpoint, k int) *report.Indica
 // doubtFigure is the figure of the flag that makes the verdict, with its
 // limit. Where that has none, or says what stands beside it, the place is for
 // the reading at the endpoint or for how many readings there are.
-func doubtFigure(e *report.Evaluation) bigFigure {
+func doubtFigure(e *report.Evaluation, m report.Decimal) bigFigure {
 	b := bigFigure{label: "readings", value: whole(e.Readings), note: leftOut(e), owner: figure.Black}
 	f := heaviest(e)
 	if f != nil && f.Figure != 0 && f.Limit != 0 && f.Flag != "disagrees" {
-		b = bigFigure{label: f.Flag, value: amount(f.Figure, f.Unit), unit: f.Unit, owner: figure.Warm, mono: true}
-		b.note = "limit " + amount(f.Limit, f.Unit) + " " + f.Unit
+		b = bigFigure{label: f.Flag, value: m.Of(amount(f.Figure, f.Unit)), unit: f.Unit, owner: figure.Warm, mono: true}
+		b.note = "limit " + m.Of(amount(f.Limit, f.Unit)) + " " + f.Unit
 	} else if len(e.Endpoints) == 1 && e.Endpoints[0].Reading != nil && e.Signal != "conductivity" {
-		value, unit := splitReading(e, *e.Endpoints[0].Reading)
+		value, unit := splitReading(e, *e.Endpoints[0].Reading, m)
 		b = bigFigure{label: "reading at the refit", value: value, unit: unit, owner: figure.Blue, note: whole(e.Readings) + " readings, " + b.note}
 		b.note = strings.TrimSuffix(b.note, " of the fit")
 	}

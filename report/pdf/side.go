@@ -17,7 +17,7 @@ const sideGap = 6.0
 func (r *runPage) drawSide(s *figure.Sheet, p *report.Picture) {
 	defer s.Block("side", figure.Box{Left: sideLeft - 1, Top: r.figTop - 3, Right: right + 3, Bottom: r.figFoot + 2})()
 	n := min(len(r.e.Endpoints), 2)
-	estimates := estimatesItem(r.e)
+	estimates := estimatesItem(r.e, r.d.mark)
 	each := r.figFoot - r.figTop - sideGap*float64(n-1)
 	if estimates.height > 0 {
 		each -= estimates.height + sideGap
@@ -99,7 +99,7 @@ func (r *runPage) drawEnlarged(s *figure.Sheet, p *report.Picture, q *report.End
 	from, to := window(r.e, p, q)
 	b := nearRange(p, q, from, to)
 	lo, hi := padded(b.from, b.to, 0.08, 0.08)
-	a := figure.NewAxes(s, area, [2]float64{from, to}, [2]float64{lo, hi}, report.Fixed)
+	a := figure.NewAxes(s, area, [2]float64{from, to}, [2]float64{lo, hi}, r.d.mark.Fixed)
 	t := figure.NewTicks(lo, hi, int(max(area.Height()/8, 3)))
 	r.drawBands(a, area.Bottom+2*figure.LaneMM)
 	drawArmBands(a, p)
@@ -108,9 +108,9 @@ func (r *runPage) drawEnlarged(s *figure.Sheet, p *report.Picture, q *report.End
 	r.drawCurve(a, p)
 	inside := r.drawNear(a, p, q)
 	r.drawDrops(a, p)
-	a.Rail(near(rail(r.e, false), from, to))
+	a.Rail(near(r.rail(false), from, to))
 	drawNumbers(a, inside, q)
-	a.Bottom(axis, figure.NewTicks(from, to, 5))
+	a.Bottom(axis, a.X.LevelTicks(5, a.Print))
 	note := "numbers: lines of the dump"
 	if len(p.Curve) > 0 {
 		note += "; dotted: a guess"
@@ -224,12 +224,12 @@ const (
 
 // estimatesItem shows what each estimator says: on one scale where the run
 // has one endpoint, as a table where several leave no common scale.
-func estimatesItem(e *report.Evaluation) item {
+func estimatesItem(e *report.Evaluation, m report.Decimal) item {
 	switch {
 	case len(e.Endpoints) == 1 && len(e.Endpoints[0].Estimates) > 0:
-		return scaleItem(e, &e.Endpoints[0])
+		return scaleItem(e, &e.Endpoints[0], m)
 	case len(e.Endpoints) > 1:
-		return tableItem(e)
+		return tableItem(e, m)
 	}
 	return item{}
 }
@@ -249,7 +249,7 @@ func estimateVolume(p *report.Endpoint, t *report.Estimate) string {
 }
 
 // tableItem is one row an estimate, by endpoint.
-func tableItem(e *report.Evaluation) item {
+func tableItem(e *report.Evaluation, m report.Decimal) item {
 	rows := 0
 	for i := range e.Endpoints {
 		rows += len(e.Endpoints[i].Estimates)
@@ -275,7 +275,7 @@ func tableItem(e *report.Evaluation) item {
 					return
 				}
 				y += tableRowHeight
-				drawEstimate(s, p, &p.Estimates[k], y)
+				drawEstimate(s, p, &p.Estimates[k], y, m)
 			}
 		}
 	}}
@@ -288,7 +288,7 @@ const (
 	tableVolume = right - 12
 )
 
-func drawEstimate(s *figure.Sheet, p *report.Endpoint, t *report.Estimate, y float64) {
+func drawEstimate(s *figure.Sheet, p *report.Endpoint, t *report.Estimate, y float64, m report.Decimal) {
 	st := noteStyle.In(figure.Blue)
 	if answers(p, t) {
 		st = st.As(figure.Bold)
@@ -296,11 +296,11 @@ func drawEstimate(s *figure.Sheet, p *report.Endpoint, t *report.Estimate, y flo
 	s.Text(sideLeft, y, noteStyle, whole(p.N))
 	s.Filled(kindShape(t.Kind), sideLeft+3.6, y-0.8, 1.9, figure.Blue)
 	s.Text(tableName, y, st, figure.Shorten(st, t.Estimator, tableKind-tableName-1))
-	volume := estimateVolume(p, t)
+	volume := m.Of(estimateVolume(p, t))
 	room := tableVolume - tableKind - figure.TextWidth(st, volume) - 1.5
 	s.Text(tableKind, y, noteStyle, figure.Shorten(noteStyle, t.Kind, room))
 	s.TextRight(tableVolume, y, st, volume)
-	s.TextRight(right, y, noteStyle, report.Fixed(t.UFitML, report.UDecimals(t.UFitML)))
+	s.TextRight(right, y, noteStyle, m.Fixed(t.UFitML, report.UDecimals(t.UFitML)))
 }
 
 // scaleRow is one row of the estimates on one scale.
@@ -352,7 +352,7 @@ const kindWhite = 1.2
 
 // scaleItem draws the estimates of an endpoint on one scale, like kinds
 // together: only they are compared.
-func scaleItem(e *report.Evaluation, p *report.Endpoint) item {
+func scaleItem(e *report.Evaluation, p *report.Endpoint, m report.Decimal) item {
 	rows := scaleRows(e, p)
 	h := 5.6 + scaleRowHeight*float64(len(rows)) + 5
 	for i := 1; i < len(rows); i++ {
@@ -367,7 +367,7 @@ func scaleItem(e *report.Evaluation, p *report.Endpoint) item {
 			from, to = min(from, r.low), max(to, r.high)
 		}
 		from, to = padded(from, to, 0.08, 0.08)
-		l := figure.NewLane(s, sideLeft+24, right-2, from, to, report.Fixed)
+		l := figure.NewLane(s, sideLeft+24, right-2, from, to, m.Fixed)
 		y += 5.6
 		for i, r := range rows {
 			if i > 0 && r.kind != rows[i-1].kind {
@@ -377,7 +377,7 @@ func scaleItem(e *report.Evaluation, p *report.Endpoint) item {
 			drawScaleRow(s, l, r, y)
 			y += scaleRowHeight
 		}
-		l.Axis(y-1.6, figure.NewTicks(from, to, 4))
+		l.Axis(y-1.6, l.X.LevelTicks(4, l.Print))
 	}}
 }
 

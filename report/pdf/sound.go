@@ -22,9 +22,10 @@ const (
 
 // smallGroup is what shares a scale.
 type smallGroup struct {
+	mark                   report.Decimal
 	runs                   []*report.Evaluation
 	fromML, toML, low, top float64
-	yTicks, xTicks         figure.Ticks
+	yTicks                 figure.Ticks
 	ghost                  []report.XY // V by V of the endpoint, reading
 }
 
@@ -39,7 +40,7 @@ func (d *document) planSmall() {
 		f.addSection(white, g.section())
 		white = 5
 	}
-	d.smallPages = [2]int{len(d.pages) + 1, len(d.pages) + len(f.pages)}
+	d.smallAt = stretch{d.volume, len(d.pages) + 1, d.volume, len(d.pages) + len(f.pages)}
 	done := 0
 	for i, items := range f.pages {
 		from := done + 1
@@ -79,7 +80,7 @@ func (d *document) smallGroups() []*smallGroup {
 			out[n-1].runs = append(out[n-1].runs, e)
 			continue
 		}
-		out = append(out, &smallGroup{runs: []*report.Evaluation{e}})
+		out = append(out, &smallGroup{mark: d.mark, runs: []*report.Evaluation{e}})
 	}
 	for _, g := range out {
 		slices.SortStableFunc(g.runs, func(a, b *report.Evaluation) int {
@@ -111,7 +112,7 @@ func (g *smallGroup) scale() {
 	}
 	g.fromML, g.toML = x.from, x.to
 	g.low, g.top = padded(y.from, y.to, 0.06, 0.06)
-	g.yTicks, g.xTicks = figure.NewTicks(g.low, g.top, 3), figure.NewTicks(g.fromML, g.toML, 4)
+	g.yTicks = figure.NewTicks(g.low, g.top, 3)
 	g.ghost = typical(g.runs)
 }
 
@@ -119,15 +120,17 @@ func (g *smallGroup) section() section {
 	e := g.runs[0]
 	sec := section{head: item{height: 8, draw: func(s *figure.Sheet, y float64) {
 		note := e.Picture.YName
-		if e.Picture.XName != "" {
-			note += "; " + e.Picture.XName
+		if x := g.mark.Axis(e); x != "" {
+			note += "; " + x
 		}
 		blockTitle(s, left, right, y, figure.Shorten(titleStyle, procedureName(e), 90), note)
 	}}}
 	sec.foot = item{height: 4, draw: func(s *figure.Sheet, y float64) {
+		// The last number may stand half beyond the last picture.
+		defer s.Block("axes of small pictures", figure.Box{Left: left - 10, Top: y, Right: right + 3, Bottom: y + 4})()
 		for k := range min(len(g.runs), smallAcross) {
 			a := g.axes(s, k, y-smallPitch)
-			a.Bottom(y-0.9, g.xTicks)
+			a.Bottom(y-0.9, a.X.LevelTicks(4, a.Print))
 		}
 		s.TextRight(left-2, y+2.4, noteStyle, "mL")
 	}}
@@ -145,7 +148,7 @@ func (g *smallGroup) section() section {
 func (g *smallGroup) axes(s *figure.Sheet, k int, y float64) *figure.Axes {
 	x := left + 45*float64(k)
 	area := figure.Box{Left: x, Top: y + smallTop, Right: x + smallWidth, Bottom: y + smallTop + smallHeight}
-	return figure.NewAxes(s, area, [2]float64{g.fromML, g.toML}, [2]float64{g.low, g.top}, report.Fixed)
+	return figure.NewAxes(s, area, [2]float64{g.fromML, g.toML}, [2]float64{g.low, g.top}, g.mark.Fixed)
 }
 
 // draw is one small picture.
@@ -235,9 +238,9 @@ func (g *smallGroup) drawFigures(a *figure.Axes, e *report.Evaluation, line []re
 	for k := range n {
 		p := &e.Endpoints[k]
 		y := top + 2.4 + noteLead*float64(k)
-		a.Sheet.TextRight(x+w, y, noteStyle.In(figure.Blue), p.Volume())
+		a.Sheet.TextRight(x+w, y, noteStyle.In(figure.Blue), g.mark.Of(p.Volume()))
 		if p.Differs != nil {
-			a.Sheet.TextRight(x+width, y, noteStyle.In(figure.Black), report.Signed(p.Differs.Percent, 2))
+			a.Sheet.TextRight(x+width, y, noteStyle.In(figure.Black), g.mark.Signed(p.Differs.Percent, 2))
 		}
 	}
 }

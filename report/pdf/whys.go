@@ -77,13 +77,13 @@ const (
 
 // whyStrips are the flags of a run in sentences, heaviest first. What to do
 // about the first stands in the headline.
-func whyStrips(e *report.Evaluation) []strip {
+func whyStrips(e *report.Evaluation, m report.Decimal) []strip {
 	var out []strip
 	first := heaviest(e)
 	for i := range e.Flags {
 		f := &e.Flags[i]
 		p := strip{name: f.Flag, note: string(f.Weight), style: bodyStyle, x: flagIndent, white: 2.2}
-		p.lines = figure.Wrap(bodyStyle, f.Says, columnEnd-left-flagIndent)
+		p.lines = figure.Wrap(bodyStyle, m.Says(f.Says), columnEnd-left-flagIndent)
 		switch f.Weight {
 		case report.Disputed:
 			p.mark = figure.Settle
@@ -106,7 +106,7 @@ func whyStrips(e *report.Evaluation) []strip {
 
 // refitStrips tell what the refit took; they stand under the
 // shorter column.
-func refitStrips(e *report.Evaluation) []strip {
+func refitStrips(e *report.Evaluation, m report.Decimal) []strip {
 	d := &e.Diagnostics
 	readings := whole(e.Readings)
 	if d.LeftOut > 0 {
@@ -114,9 +114,9 @@ func refitStrips(e *report.Evaluation) []strip {
 	}
 	out := []strip{{name: "What the refit took", style: bodyStyle}, fact("readings", readings)}
 	if d.V0ML != nil {
-		out = append(out, fact("volume before", report.Short(*d.V0ML, 6)+" mL"))
+		out = append(out, fact("volume before", m.Short(*d.V0ML, 6)+" mL"))
 	}
-	if noise := noiseText(e); noise != "" {
+	if noise := m.Of(noiseText(e)); noise != "" {
 		out = append(out, fact("noise of a reading", noise))
 	}
 	return append(out, fact("schema", e.Schema))
@@ -137,9 +137,10 @@ func noiseText(e *report.Evaluation) string {
 }
 
 // factStrips are the facts as the dump says them.
-func factStrips(e *report.Evaluation) []strip {
+func factStrips(e *report.Evaluation, m report.Decimal) []strip {
 	f := &e.Facts
 	var out []strip
+	number := func(v *float64, unit string) string { return m.Of(number(v, unit)) }
 	add := func(key, value string) {
 		if strings.TrimSpace(value) != "" {
 			out = append(out, fact(key, value))
@@ -151,7 +152,7 @@ func factStrips(e *report.Evaluation) []strip {
 	add("operator", f.Operator)
 	add("purpose", f.Purpose)
 	add("started", moment(f.Started))
-	add("titrant", titrant(f.Titrant, f.TitrantMolPerL))
+	add("titrant", titrant(f.Titrant, f.TitrantMolPerL, m))
 	add("aliquot", strings.TrimPrefix(number(f.AliquotML, "mL")+prefixed(", solvent ", number(f.SolventML, "mL")), ", "))
 	add("reaction", f.Reaction)
 	add("temperature", number(f.TemperatureC, "°C"))
@@ -199,11 +200,11 @@ func prefixed(words, value string) string {
 	return words + value
 }
 
-func titrant(name string, molPerL *float64) string {
+func titrant(name string, molPerL *float64, m report.Decimal) string {
 	if molPerL == nil {
 		return name
 	}
-	return strings.TrimSpace(name + " " + report.Short(*molPerL, 6) + " mol/L")
+	return strings.TrimSpace(name + " " + m.Short(*molPerL, 6) + " mol/L")
 }
 
 // unitOf is the unit of a run's readings, by its signal.

@@ -11,11 +11,17 @@ import (
 	"lastdrop/report"
 )
 
-// whole prints a count.
+// whole prints a count, from five digits on in groups parted by a space that
+// no line ends at: a comma would be a decimal mark to some readers.
+//
+// Source: ISO 80000-1, 7.3.1 (from memory).
 func whole(n int) string {
 	s := strconv.Itoa(n)
+	if n > -10000 && n < 10000 {
+		return s
+	}
 	for i := len(s) - 3; i > 0 && s[i-1] != '-'; i -= 3 {
-		s = s[:i] + "," + s[i:]
+		s = s[:i] + "\u00a0" + s[i:]
 	}
 	return s
 }

@@ -5,6 +5,7 @@ import (
 	"errors"
 	"flag"
 	"fmt"
+	"io"
 	"math"
 	"os"
 	"path/filepath"
@@ -21,21 +22,51 @@ var update = flag.Bool("update", false, "rewrite the golden text of the pages")
 func write(t *testing.T, n *report.Night, o Options) ([]byte, Result) {
 	t.Helper()
 	var b bytes.Buffer
-	res, err := Write(&b, n, o)
+	res, err := writeAll(&b, n, o)
 	if err != nil {
 		t.Fatal(err)
 	}
 	return b.Bytes(), res
 }
 
+// writeAll writes every volume, one behind the other.
+func writeAll(w io.Writer, n *report.Night, o Options) (all Result, err error) {
+	b, err := Plan(n, o)
+	if err != nil {
+		return all, err
+	}
+	for v := 1; v <= b.Volumes(); v++ {
+		res, err := b.Write(w, v)
+		if err != nil {
+			return all, err
+		}
+		all.Pages += res.Pages
+		all.Failed, all.Replaced = append(all.Failed, res.Failed...), append(all.Replaced, res.Replaced...)
+	}
+	return all, nil
+}
+
+func firstVolume(n *report.Night, o Options) (*document, error) {
+	b, err := Plan(n, o)
+	if err != nil {
+		return nil, err
+	}
+	return b.volumes[0], nil
+}
+
 // texts draws a night and returns the texts of each page in the order of
 // drawing.
 func texts(t *testing.T, n *report.Night, o Options) [][]string {
 	t.Helper()
-	d, err := newDocument(n, o)
+	d, err := firstVolume(n, o)
 	if err != nil {
 		t.Fatal(err)
 	}
+	return pageTexts(t, d)
+}
+
+func pageTexts(t *testing.T, d *document) [][]string {
+	t.Helper()
 	var out [][]string
 	s := figure.NewSheet(d.width, d.height)
 	for i := range d.pages {
@@ -51,6 +82,15 @@ func texts(t *testing.T, n *report.Night, o Options) [][]string {
 		out = append(out, page)
 	}
 	return out
+}
+
+// drawnTexts are the texts of all pages of a volume.
+func drawnTexts(t *testing.T, d *document) (all []string) {
+	t.Helper()
+	for _, page := range pageTexts(t, d) {
+		all = append(all, page...)
+	}
+	return all
 }
 
 // TestSameBytes: two writes of one night are the same file.
@@ -110,7 +150,7 @@ func TestGolden(t *testing.T) {
 // order of concern, whatever the night's own order.
 func TestPlaces(t *testing.T) {
 	n := demoNight()
-	d, err := newDocument(n, Options{})
+	d, err := firstVolume(n, Options{})
 	if err != nil {
 		t.Fatal(err)
 	}
@@ -150,7 +190,7 @@ func TestHeadlines(t *testing.T) {
 		{night(0, 0, 0, 0), "There was no run to read.", "Nothing is to be done."},
 		{night(0, 0, 0, 2), "No run could be read, two are unread.", "What is unread has no result."},
 	} {
-		d, err := newDocument(c.night, Options{})
+		d, err := firstVolume(c.night, Options{})
 		if err != nil {
 			t.Fatal(err)
 		}
@@ -253,7 +293,7 @@ func TestPanicIsKept(t *testing.T) {
 
 // TestFailurePage tells the run's facts.
 func TestFailurePage(t *testing.T) {
-	d, err := newDocument(demoNight(), Options{})
+	d, err := firstVolume(demoNight(), Options{})
 	if err != nil {
 		t.Fatal(err)
 	}
@@ -273,40 +313,11 @@ func TestFailurePage(t *testing.T) {
 	}
 }
 
-// TestVolumes: 450 large pages are three volumes; each names itself, and all
-// runs have their page in one of them.
-func TestVolumes(t *testing.T) {
-	n := emptyNight()
-	for range 450 {
-		e := overshot()
-		e.Picture = nil
-		n.Evaluations = append(n.Evaluations, e)
-	}
-	large := 0
-	for v := 1; v <= 3; v++ {
-		d, err := newDocument(n, Options{Volume: v})
-		if err != nil || d.volumes != 3 {
-			t.Fatal(err, d.volumes)
-		}
-		large += len(d.large)
-		if len(d.large) > VolumePages {
-			t.Errorf("volume %d has %d large pages", v, len(d.large))
-		}
-	}
-	if large != 450 {
-		t.Errorf("%d of 450 runs have a page", large)
-	}
-	var option *OptionError
-	if _, err := newDocument(n, Options{Volume: 4}); !errors.As(err, &option) {
-		t.Errorf("volume 4 of 3: %v", err)
-	}
-}
-
 // TestUnknownPages is refused before anything is written.
 func TestUnknownPages(t *testing.T) {
 	var b bytes.Buffer
 	var option *OptionError
-	if _, err := Write(&b, emptyNight(), Options{Pages: "some"}); !errors.As(err, &option) || b.Len() > 0 {
+	if _, err := writeAll(&b, emptyNight(), Options{Pages: "some"}); !errors.As(err, &option) || b.Len() > 0 {
 		t.Errorf("%v, %d bytes", err, b.Len())
 	}
 }

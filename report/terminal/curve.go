@@ -205,7 +205,7 @@ func (c *plot) writeRows() {
 	first, last := c.grid.height, -1
 	for _, v := range c.up.Values {
 		row := c.row(v)
-		labels[row] = report.Fixed(v, c.up.Decimals)
+		labels[row] = c.p.mark.Fixed(v, c.up.Decimals)
 		first, last = min(first, row), max(last, row)
 	}
 	for row := 0; row < c.grid.height; row++ {
@@ -259,7 +259,7 @@ func (c *plot) writeAxis() {
 	for _, v := range c.across.Values {
 		at := laneLabel + c.column(v)
 		axis[at] = '┬'
-		label := []rune(report.Fixed(v, c.across.Decimals))
+		label := []rune(c.p.mark.Fixed(v, c.across.Decimals))
 		from := min(at-(len(label)-1)/2, len(numbers)-len(label))
 		if from >= free {
 			copy(numbers[from:], label)
@@ -268,14 +268,14 @@ func (c *plot) writeAxis() {
 	}
 	c.p.line(piece{faint, string(axis)})
 	c.p.line(piece{faint, string(numbers)})
-	c.p.line(piece{strong, padLeft(Shorten(c.e.Picture.XName, width), width)})
+	c.p.line(piece{strong, padLeft(Shorten(c.p.mark.Axis(c.e), width), width)})
 }
 
 // writeNotes explains the signs that are not common.
 func (c *plot) writeNotes() {
 	var notes []string
 	if c.e.Picture.SlopeName != "" && len(c.e.Picture.Slope) > 0 {
-		notes = append(notes, "slope: "+Clean(c.e.Picture.SlopeName))
+		notes = append(notes, "slope: "+Clean(c.p.mark.Says(c.e.Picture.SlopeName)))
 	}
 	if c.guessed {
 		notes = append(notes, "dotted: a guess, no readings there")
@@ -284,7 +284,7 @@ func (c *plot) writeNotes() {
 		notes = append(notes, string(leftOutSign)+" left out of the fit")
 	}
 	for _, d := range c.beyond[:min(len(c.beyond), 3)] {
-		notes = append(notes, "line "+strconv.Itoa(d.Line)+" stands beyond the scale: "+readingSays(c.e.Signal, d.AsRead))
+		notes = append(notes, "line "+strconv.Itoa(d.Line)+" stands beyond the scale: "+c.p.readingSays(c.e.Signal, d.AsRead))
 	}
 	if more := len(c.beyond) - 3; more > 0 {
 		notes = append(notes, "and "+strconv.Itoa(more)+" more")

@@ -47,7 +47,7 @@ func (l *lane) write(column int, s string, i ink) bool {
 
 // isRailSign tells signs from figures: a figure may touch a sign, but not
 // another figure.
-func isRailSign(r rune) bool { return r != '.' && (r < '0' || r > '9') }
+func isRailSign(r rune) bool { return r != '.' && r != ',' && (r < '0' || r > '9') }
 
 func (l *lane) pieces() []piece {
 	out := make([]piece, len(l.signs))
@@ -125,7 +125,7 @@ func (c *plot) refitLane() (*lane, []label) {
 		l.put(from, '[', plain)
 		l.put(to, ']', plain)
 		l.put(at, markOf(r.Kind, true), blue)
-		labels = append(labels, label{min(from, c.column(r.Low95ML)), max(to, c.column(r.High95ML)), r.Volume(), blue})
+		labels = append(labels, label{min(from, c.column(r.Low95ML)), max(to, c.column(r.High95ML)), c.p.mark.Of(r.Volume()), blue})
 	}
 	return l, labels
 }
@@ -144,7 +144,7 @@ func (c *plot) indicatedLane() (*lane, []label) {
 		}
 		at := c.column(in.VolumeML)
 		l.put(at, markOf(in.Kind, false), plain)
-		text := in.Volume()
+		text := c.p.mark.Of(in.Volume())
 		if in.VolumeML < c.left || in.VolumeML > c.right {
 			text += " (beyond)"
 		}

@@ -55,14 +55,14 @@ func (p *page) figures(e *report.Evaluation) {
 			number = " " + strconv.Itoa(i+1)
 		}
 		if r := pair.Refit; r != nil {
-			p.labelled("refit"+number, blue, r.Volume()+" mL, "+Clean(r.Kind)+" by "+Clean(r.Estimator)+", u "+r.U()+" mL")
-			p.labelled("  95 %", blue, r.Interval()+" mL; readings only, without burette and titrant")
+			p.labelled("refit"+number, blue, p.mark.Of(r.Volume())+" mL, "+Clean(r.Kind)+" by "+Clean(r.Estimator)+", u "+p.mark.Of(r.U())+" mL")
+			p.labelled("  95 %", blue, p.mark.Of(r.Interval())+" mL; readings only, without burette and titrant")
 		} else {
 			p.labelled("refit"+number, blue, "no endpoint")
 		}
 		p.indicated(number, pair)
 		if r := pair.Refit; r != nil {
-			p.labelled("  bracket", plain, bracketSays(e, r))
+			p.labelled("  bracket", plain, p.bracketSays(e, r))
 		}
 	}
 	if len(pairs) == 0 {
@@ -77,7 +77,7 @@ func (p *page) indicated(number string, pair report.Pair) {
 		p.labelled("indicated"+number, plain, "none")
 		return
 	}
-	says := in.Volume() + " mL, " + Clean(in.Kind)
+	says := p.mark.Of(in.Volume()) + " mL, " + Clean(in.Kind)
 	if in.Line > 0 {
 		says += ", line " + strconv.Itoa(in.Line) + " of the dump"
 	}
@@ -86,27 +86,27 @@ func (p *page) indicated(number string, pair report.Pair) {
 	switch {
 	case r == nil:
 	case r.Differs != nil:
-		p.labelled("  difference", blue, r.Difference()+" mL, "+r.DifferencePercent()+" % of the refit; "+r.DifferenceLimit()+" mL allowed"+betweenKinds(r))
+		p.labelled("  difference", blue, p.mark.Of(r.Difference())+" mL, "+p.mark.Of(r.DifferencePercent())+" % of the refit; "+p.mark.Of(r.DifferenceLimit())+" mL allowed"+p.betweenKinds(r))
 	case r.Kind != in.Kind:
 		p.labelled("  difference", plain, "not told: "+Clean(r.Kind)+" and "+Clean(in.Kind)+" are unlike kinds")
 	}
 }
 
 // betweenKinds tells the kind that was compared where it is not the answer's.
-func betweenKinds(r *report.Endpoint) string {
+func (p *page) betweenKinds(r *report.Endpoint) string {
 	if r.Differs.Kind == r.Kind {
 		return ""
 	}
-	return " (between " + Clean(r.Differs.Kind) + " " + report.Fixed(r.Differs.RefitML, r.DifferenceDecimals()) + " mL and the indicated)"
+	return " (between " + Clean(r.Differs.Kind) + " " + p.mark.Fixed(r.Differs.RefitML, r.DifferenceDecimals()) + " mL and the indicated)"
 }
 
 // bracketSays names the two readings and where they stand in the dump.
-func bracketSays(e *report.Evaluation, r *report.Endpoint) string {
-	return readingAt(e, r.BracketML[0]) + " to " + readingAt(e, r.BracketML[1])
+func (p *page) bracketSays(e *report.Evaluation, r *report.Endpoint) string {
+	return p.readingAt(e, r.BracketML[0]) + " to " + p.readingAt(e, r.BracketML[1])
 }
 
-func readingAt(e *report.Evaluation, volumeML float64) string {
-	says := report.Fixed(volumeML, 3) + " mL"
+func (p *page) readingAt(e *report.Evaluation, volumeML float64) string {
+	says := p.mark.Fixed(volumeML, report.BracketDecimals) + " mL"
 	if e.Picture == nil {
 		return says
 	}
@@ -120,18 +120,18 @@ func readingAt(e *report.Evaluation, volumeML float64) string {
 		return says
 	}
 	d := e.Picture.Dots[found]
-	return says + " (line " + strconv.Itoa(d.Line) + ", " + readingSays(e.Signal, d.AsRead) + ")"
+	return says + " (line " + strconv.Itoa(d.Line) + ", " + p.readingSays(e.Signal, d.AsRead) + ")"
 }
 
 // readingSays prints a reading with its name or unit.
-func readingSays(signal string, v float64) string {
+func (p *page) readingSays(signal string, v float64) string {
 	switch s := ingest.Signal(signal); s {
 	case ingest.Potential:
-		return report.Fixed(v, 1) + " mV"
+		return p.mark.Fixed(v, 1) + " mV"
 	case ingest.Conductivity:
-		return report.Short(v, 5) + " mS/cm"
+		return p.mark.Short(v, 5) + " mS/cm"
 	}
-	return "pH " + report.Fixed(v, 2)
+	return "pH " + p.mark.Fixed(v, 2)
 }
 
 // why lists the flags, heaviest first, each with its sentence and what to do.
@@ -155,7 +155,7 @@ func (p *page) why(e *report.Evaluation) {
 			about = ", endpoint " + strconv.Itoa(f.Endpoint)
 		}
 		p.line(piece{mark, weightMark(f.Weight) + " "}, piece{strong, Shorten(f.Flag, 20)}, piece{faint, "  " + string(f.Weight) + about})
-		p.sentence(plain, "    ", Clean(f.Says))
+		p.sentence(plain, "    ", Clean(p.mark.Says(f.Says)))
 		if lines := report.LineList(f.Lines); lines != "" {
 			p.sentence(faint, "    ", "In the dump: "+lines+".")
 		}
@@ -171,8 +171,8 @@ func (p *page) arms(e *report.Evaluation) {
 	}
 	p.title("What the arms say", "fitted to the readings corrected for dilution")
 	for _, a := range e.Picture.Arms {
-		p.labelled(armLabel(a.Name), plain, strconv.Itoa(a.Readings)+" readings from "+report.Fixed(a.FromML, 3)+" to "+report.Fixed(a.ToML, 3)+
-			" mL; slope "+report.Short(a.Slope, 4)+" mS/cm per mL, u "+report.Short(a.USlope, 2))
+		p.labelled(armLabel(a.Name), plain, strconv.Itoa(a.Readings)+" readings from "+p.mark.Fixed(a.FromML, 3)+" to "+p.mark.Fixed(a.ToML, 3)+
+			" mL; slope "+p.mark.Short(a.Slope, 4)+" mS/cm per mL, u "+p.mark.Short(a.USlope, 2))
 	}
 }
 
@@ -207,7 +207,7 @@ const tableWidth = 72
 
 // estimate is one row; the answer says so in words.
 func (p *page) estimate(r *report.Endpoint, one report.Estimate) {
-	answer, volume, u := "", report.Fixed(one.VolumeML, report.VolumeDecimals(one.UFitML)), report.Fixed(one.UFitML, report.UDecimals(one.UFitML))
+	answer, volume, u := "", p.mark.Fixed(one.VolumeML, report.VolumeDecimals(one.UFitML)), p.mark.Fixed(one.UFitML, report.UDecimals(one.UFitML))
 	if one.Estimator == r.Estimator && one.Kind == r.Kind {
 		answer = "the answer"
 	}
@@ -224,12 +224,12 @@ func (p *page) facts(e *report.Evaluation) {
 	p.title("Facts", "as the dump says")
 	titrant := Clean(f.Titrant)
 	if f.TitrantMolPerL != nil {
-		titrant = strings.TrimSpace(titrant + " " + report.Short(*f.TitrantMolPerL, 6) + " mol/L")
+		titrant = strings.TrimSpace(titrant + " " + p.mark.Short(*f.TitrantMolPerL, 6) + " mol/L")
 	}
 	for _, fact := range [...][2]string{
 		{"sample", f.Sample}, {"procedure", f.Procedure}, {"purpose", f.Purpose}, {"instrument", f.Instrument}, {"operator", f.Operator},
-		{"started", report.Moment(f.Started)}, {"titrant", titrant}, {"aliquot", measured(f.AliquotML, "mL")}, {"solvent", measured(f.SolventML, "mL")},
-		{"temperature", measured(f.TemperatureC, "°C")}, {"reaction", f.Reaction}, {"end reading", measured(f.EndReading, ingest.Signal(e.Signal).Unit())},
+		{"started", report.Moment(f.Started)}, {"titrant", titrant}, {"aliquot", p.measured(f.AliquotML, "mL")}, {"solvent", p.measured(f.SolventML, "mL")},
+		{"temperature", p.measured(f.TemperatureC, "°C")}, {"reaction", f.Reaction}, {"end reading", p.measured(f.EndReading, ingest.Signal(e.Signal).Unit())},
 	} {
 		p.labelled(fact[0], plain, Clean(fact[1]))
 	}
@@ -238,14 +238,14 @@ func (p *page) facts(e *report.Evaluation) {
 	}
 }
 
-func measured(v *float64, unit string) string {
+func (p *page) measured(v *float64, unit string) string {
 	switch {
 	case v == nil:
 		return ""
 	case unit == "pH":
-		return "pH " + report.Short(*v, 6)
+		return "pH " + p.mark.Short(*v, 6)
 	}
-	return report.Short(*v, 6) + " " + unit
+	return p.mark.Short(*v, 6) + " " + unit
 }
 
 // origin is what was read and how: the audit's part.
@@ -267,23 +267,23 @@ func (p *page) origin(e *report.Evaluation) {
 		}
 		p.labelled(label, plain, Clean(r))
 	}
-	p.labelled("the fit", plain, fitSays(e))
+	p.labelled("the fit", plain, p.fitSays(e))
 }
 
 // fitSays are the figures of the fit that no flag needs.
-func fitSays(e *report.Evaluation) string {
+func (p *page) fitSays(e *report.Evaluation) string {
 	d, said := &e.Diagnostics, []string(nil)
 	if d.ReadingNoise != nil {
-		said = append(said, "noise of a reading "+report.Short(*d.ReadingNoise, 2)+" "+ingest.Signal(e.Signal).Unit())
+		said = append(said, "noise of a reading "+p.mark.Short(*d.ReadingNoise, 2)+" "+ingest.Signal(e.Signal).Unit())
 	}
 	if d.ResidualSD != nil {
-		said = append(said, "residuals "+report.Short(*d.ResidualSD, 2)+" sd (1 is what the noise explains)")
+		said = append(said, "residuals "+p.mark.Short(*d.ResidualSD, 2)+" sd (1 is what the noise explains)")
 	}
 	if d.LeftOut > 0 {
 		said = append(said, report.Some(d.LeftOut, "reading", "readings")+" left out")
 	}
 	if d.V0ML != nil {
-		said = append(said, "volume before titration "+report.Short(*d.V0ML, 6)+" mL")
+		said = append(said, "volume before titration "+p.mark.Short(*d.V0ML, 6)+" mL")
 	}
 	return strings.Join(said, "; ")
 }

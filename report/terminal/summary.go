@@ -14,17 +14,23 @@ const (
 	unreadMost = 12
 )
 
+// SummaryOptions are what the summary tells besides the night.
+type SummaryOptions struct {
+	Files   []string // paths of what was written
+	Volumes int      // that the pages fill; more than one is told
+	Decimal report.Decimal
+}
+
 // Summary writes the short summary of a night that a timer mails: plain text,
 // short lines, the most urgent first, readable without a table's alignment.
-// files are the paths of what was written.
-func Summary(w io.Writer, n *report.Night, files []string) error {
-	p := newPage(Options{Width: mailWidth})
+func Summary(w io.Writer, n *report.Night, o SummaryOptions) error {
+	p := newPage(Options{Width: mailWidth, Decimal: o.Decimal})
 	p.headline(n)
 	p.totals(n)
 	p.urgent(n)
 	p.unreadShort(n)
 	p.waiting(n)
-	p.files(files)
+	p.files(o)
 	p.blank()
 	p.sentence(plain, "", report.Caution)
 	if n.Invented {
@@ -121,10 +127,10 @@ func (p *page) urgentRun(e *report.Evaluation) {
 	if f := e.Heaviest(); f != nil {
 		w, _ := report.Words(f.Flag)
 		p.sentence(plain, "    ", Clean(report.Upper(w.Headline))+"."+alsoFlagged(e))
-		p.sentence(plain, "    ", Clean(f.Says))
+		p.sentence(plain, "    ", Clean(p.mark.Says(f.Says)))
 	}
 	if !saysFigures(e) {
-		p.sentence(plain, "    ", figuresOf(e))
+		p.sentence(plain, "    ", p.figuresOf(e))
 	}
 	p.sentence(plain, "    ", runPlace(e))
 }
@@ -163,10 +169,10 @@ func contains(all []string, one string) bool {
 
 // figuresOf is refit and indicated endpoint in one sentence; unlike kinds are
 // named, not compared.
-func figuresOf(e *report.Evaluation) string {
+func (p *page) figuresOf(e *report.Evaluation) string {
 	var said []string
 	for _, pair := range e.Pairs() {
-		said = append(said, pairSays(pair))
+		said = append(said, p.pairSays(pair))
 	}
 	if len(said) == 0 {
 		return "No endpoint; the instrument indicates none either."
@@ -177,19 +183,19 @@ func figuresOf(e *report.Evaluation) string {
 	return report.Upper(strings.Join(said, "; ")) + "."
 }
 
-func pairSays(pair report.Pair) string {
+func (p *page) pairSays(pair report.Pair) string {
 	r, in := pair.Refit, pair.Indicated
 	if r == nil {
-		return "indicated " + in.Volume() + " mL (" + Clean(in.Kind) + ")"
+		return "indicated " + p.mark.Of(in.Volume()) + " mL (" + Clean(in.Kind) + ")"
 	}
-	s := "refit " + r.Volume() + " mL (" + Clean(r.Kind) + ")"
+	s := "refit " + p.mark.Of(r.Volume()) + " mL (" + Clean(r.Kind) + ")"
 	switch {
 	case in == nil:
 		s += ", indicated none"
 	case r.Differs != nil && in.Kind == r.Differs.Kind:
-		s += ", indicated " + in.Volume() + " mL, difference " + r.Difference() + " mL"
+		s += ", indicated " + p.mark.Of(in.Volume()) + " mL, difference " + p.mark.Of(r.Difference()) + " mL"
 	default:
-		s += ", indicated " + in.Volume() + " mL (" + Clean(in.Kind) + ")"
+		s += ", indicated " + p.mark.Of(in.Volume()) + " mL (" + Clean(in.Kind) + ")"
 	}
 	return s
 }
@@ -240,13 +246,16 @@ func waitingNames(waiting []report.Waiting) string {
 
 // files are not wrapped: a path that is broken can be neither copied nor
 // tapped.
-func (p *page) files(files []string) {
-	if len(files) == 0 {
+func (p *page) files(o SummaryOptions) {
+	if len(o.Files) == 0 {
 		return
 	}
 	p.blank()
 	p.line(piece{strong, "FILES"})
-	for _, f := range files {
+	for _, f := range o.Files {
 		p.line(piece{plain, Clean(f)})
+	}
+	if o.Volumes > 1 {
+		p.sentence(plain, "", "The pages fill "+report.Number(o.Volumes)+" volumes; the most urgent runs stand in summary.pdf.")
 	}
 }

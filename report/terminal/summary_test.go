@@ -12,7 +12,7 @@ import (
 func mail(t *testing.T, n *report.Night, files ...string) string {
 	t.Helper()
 	var b bytes.Buffer
-	if err := Summary(&b, n, files); err != nil {
+	if err := Summary(&b, n, SummaryOptions{Files: files}); err != nil {
 		t.Fatal(err)
 	}
 	return b.String()

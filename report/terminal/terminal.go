@@ -15,8 +15,9 @@ import (
 
 // Options are how a terminal shows text.
 type Options struct {
-	Colour bool // support by colours, for terminals only
-	Width  int  // columns, 40 to 160; 0 means 80
+	Colour  bool // support by colours, for terminals only
+	Width   int  // columns, 40 to 160; 0 means 80
+	Decimal report.Decimal
 }
 
 const (
@@ -31,6 +32,7 @@ type page struct {
 	text   bytes.Buffer
 	colour bool
 	width  int
+	mark   report.Decimal
 }
 
 func newPage(o Options) *page {
@@ -38,7 +40,7 @@ func newPage(o Options) *page {
 	if width == 0 {
 		width = usualWidth
 	}
-	return &page{colour: o.Colour, width: min(max(width, leastWidth), mostWidth)}
+	return &page{colour: o.Colour, mark: o.Decimal, width: min(max(width, leastWidth), mostWidth)}
 }
 
 func (p *page) writeTo(w io.Writer) error {

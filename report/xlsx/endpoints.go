@@ -70,7 +70,7 @@ func figureCells(e *report.Evaluation, pair report.Pair) []cell {
 		cells[4], cells[5] = number(r.Low95ML, d, blue), number(r.High95ML, d, blue)
 		if f := r.Differs; f != nil {
 			d = r.DifferenceDecimals()
-			cells[8], cells[9], cells[10] = signed(f.ML, d, blue), signed(f.Percent, 2, blue), number(f.LimitML, min(report.UDecimals(f.LimitML), asStated(f.LimitML)), ink)
+			cells[8], cells[9], cells[10] = signed(f.ML, d, blue), signed(f.Percent, 2, blue), number(f.LimitML, report.UDecimals(f.LimitML), ink)
 		}
 	} else if len(e.Endpoints) == 0 {
 		cells[1] = cell{"no endpoint", plain().in(blue)}
@@ -121,7 +121,7 @@ func factCells(e *report.Evaluation, of *report.Endpoint) []cell {
 		cells[5] = number(*of.Reading, readingDecimals(e.Signal), blue)
 		cells[6] = cell{ingest.Signal(e.Signal).Unit(), plain().in(blue)}
 	}
-	cells[7], cells[8] = number(of.BracketML[0], 3, ink), number(of.BracketML[1], 3, ink)
+	cells[7], cells[8] = number(of.BracketML[0], report.BracketDecimals, ink), number(of.BracketML[1], report.BracketDecimals, ink)
 	return cells
 }
 

@@ -20,7 +20,7 @@ func layNight(b *book, p *places) error {
 	layUrgent(s, p)
 	layProcedures(s, p.night)
 	layFrontUnread(s, p.night)
-	layFoot(s, p.night)
+	layFoot(s, p)
 	return s.finish()
 }
 
@@ -171,8 +171,12 @@ func foundAndHint(u *report.Unread) string {
 	return says
 }
 
-func layFoot(s *sheet, n *report.Night) {
+func layFoot(s *sheet, p *places) {
+	curves := ""
+	if p.curves {
+		curves = curvesSheet + " has readings and computed curves; "
+	}
 	s.skip(1)
 	s.put(0, label(report.Caution))
-	s.put(0, label("Sheets: "+endpointsSheet+" has a row for each endpoint, "+flagsSheet+" one for each flag; "+provenanceSheet+" tells the limits, "+glossarySheet+" the words. lastdrop "+n.Lastdrop))
+	s.put(0, label("Sheets: "+endpointsSheet+" has a row for each endpoint, "+flagsSheet+" one for each flag; "+curves+provenanceSheet+" tells the limits, "+glossarySheet+" the words. lastdrop "+p.night.Lastdrop))
 }

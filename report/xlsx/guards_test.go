@@ -51,7 +51,7 @@ func TestNoNumberIsRefusedByItsCell(t *testing.T) {
 		}
 		c.spoil(n)
 		var b bytes.Buffer
-		err := Write(&b, n)
+		err := Write(&b, n, Options{})
 		if err == nil || err.Error() != c.want {
 			t.Errorf("%s:\n got %v\nwant %s", c.name, err, c.want)
 		}
@@ -64,7 +64,7 @@ func TestNoNumberIsRefusedByItsCell(t *testing.T) {
 func TestDateMustBeADay(t *testing.T) {
 	n := inventedNight()
 	n.Date = "3.4.2031"
-	err := Write(&bytes.Buffer{}, n)
+	err := Write(&bytes.Buffer{}, n, Options{})
 	if want := `date of the night: "3.4.2031" is no day; write it as 2031-04-03`; err == nil || err.Error() != want {
 		t.Errorf("got %v, want %s", err, want)
 	}

@@ -125,7 +125,7 @@ func BenchmarkWorkbook1000Rows(b *testing.B) {
 	n := longNight(1000)
 	b.ReportAllocs()
 	for b.Loop() {
-		if err := Write(discard{}, n); err != nil {
+		if err := Write(discard{}, n, Options{}); err != nil {
 			b.Fatal(err)
 		}
 	}

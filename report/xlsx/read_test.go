@@ -20,8 +20,13 @@ type written struct {
 
 func write(t *testing.T, n *report.Night) written {
 	t.Helper()
+	return writeWith(t, n, Options{})
+}
+
+func writeWith(t *testing.T, n *report.Night, o Options) written {
+	t.Helper()
 	var b bytes.Buffer
-	if err := Write(&b, n); err != nil {
+	if err := Write(&b, n, o); err != nil {
 		t.Fatal(err)
 	}
 	f, err := excelize.OpenReader(bytes.NewReader(b.Bytes()), excelize.Options{RawCellValue: true})

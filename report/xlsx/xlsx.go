@@ -10,6 +10,7 @@ package xlsx
 
 import (
 	"io"
+	"slices"
 
 	"lastdrop/report"
 )
@@ -20,20 +21,31 @@ const (
 	endpointsSheet  = "Endpoints"
 	flagsSheet      = "Flags"
 	unreadSheet     = "Unread"
+	curvesSheet     = "Curves"
 	provenanceSheet = "Provenance"
 	glossarySheet   = "Glossary"
 )
 
+// Options are what a workbook has besides what every one has.
+type Options struct {
+	HasCurves bool
+	Curves    []int // evaluations whose readings and curves the sheet of curves has, in its order
+}
+
 // Write writes summary.xlsx. A NaN or infinite figure is an error that names
 // its cell; n.Date must be a day.
-func Write(w io.Writer, n *report.Night) error {
+func Write(w io.Writer, n *report.Night, o Options) error {
 	b, err := newBook(title(n), n.Date, "lastdrop "+n.Lastdrop)
 	if err != nil {
 		return err
 	}
 	defer b.file.Close() // nothing was put on disk that could fail to go
-	p := places{night: n, endpoint: endpointRows(n), flag: flagRows(n), footer: footerText(n.Invented)}
-	for _, lay := range []func(*book, *places) error{layNight, layEndpoints, layFlags, layUnread, layProvenance, layGlossary} {
+	p := places{night: n, endpoint: endpointRows(n), flag: flagRows(n), footer: footerText(n.Invented), curves: o.HasCurves}
+	sheets := []func(*book, *places) error{layNight, layEndpoints, layFlags, layUnread, layProvenance, layGlossary}
+	if o.HasCurves {
+		sheets = slices.Insert(sheets, 3, func(b *book, p *places) error { return layCurves(b, p, o.Curves) })
+	}
+	for _, lay := range sheets {
 		if err := lay(b, &p); err != nil {
 			return err
 		}
@@ -55,6 +67,7 @@ type places struct {
 	endpoint []int // first row in Endpoints, by evaluation
 	flag     []int // first row in Flags, by evaluation; 0 without flags
 	footer   string
+	curves   bool // there is a sheet of curves
 }
 
 func endpointRows(n *report.Night) []int {

@@ -130,7 +130,13 @@ func number(v *float64, unit string) string {
 }
 
 // place names a run for people.
-func place(e *report.Evaluation) string { return fmt.Sprintf("%s, run %d,", e.Dump, e.Run) }
+func place(e *report.Evaluation) string {
+	dump := e.Dump
+	if strings.ContainsAny(dump, ` "()`) { // its words must not be taken for ours
+		dump = fmt.Sprintf("%q", dump)
+	}
+	return fmt.Sprintf("%s, run %d,", dump, e.Run)
+}
 
 func count(n int, one, many string) string {
 	if n == 1 {

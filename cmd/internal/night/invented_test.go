@@ -90,13 +90,18 @@ func newBench(t *testing.T, dumps map[string]string) *bench {
 		Folders: []string{b.path("dumps")}, Into: b.path("out"), Date: "2031-04-03", Lastdrop: "0.0.0",
 		Now:   func() time.Time { return moment },
 		Refit: inventedRefit,
-		Outputs: []Output{
-			{"evaluations.jsonl", func(w io.Writer, n *report.Night) error { return objects(w, n.Evaluations) }},
-			{"unread.jsonl", func(w io.Writer, n *report.Night) error { return objects(w, n.Unread) }},
-		},
-		Log: slog.New(slog.NewTextHandler(&b.log, nil)),
+		Log:   slog.New(slog.NewTextHandler(&b.log, nil)),
 	}
+	b.outputs(
+		Output{"evaluations.jsonl", func(w io.Writer, n *report.Night) error { return objects(w, n.Evaluations) }},
+		Output{"unread.jsonl", func(w io.Writer, n *report.Night) error { return objects(w, n.Unread) }},
+	)
 	return b
+}
+
+// outputs sets what a night is published as.
+func (b *bench) outputs(all ...Output) {
+	b.opts.Outputs = func(*report.Night) ([]Output, error) { return all, nil }
 }
 
 func objects[T any](w io.Writer, all []T) error {

@@ -17,7 +17,9 @@ import (
 	"context"
 	"io"
 	"log/slog"
+	"os"
 	"path/filepath"
+	"slices"
 	"sort"
 	"strings"
 	"time"
@@ -49,8 +51,14 @@ type Options struct {
 	Lastdrop   string // program version
 	Limits     []report.Limit
 	Refit      Refit
-	Outputs    []Output     // in the order in which they are put in place: those that a person may hold open first
 	Log        *slog.Logger // warnings
+
+	// Outputs are the files of a night, in the order in which they are put in
+	// place: those that a person may hold open first; nil for none.
+	Outputs func(*report.Night) ([]Output, error)
+	// Former tells whether a file of OUT, by its name, is an earlier night's
+	// and goes when this night does not have it; nil for none.
+	Former func(name string) bool
 }
 
 // Result is a published night.
@@ -110,18 +118,49 @@ func Sweep(ctx context.Context, o Options) (*Result, error) {
 // put publishes the night. After its last look at the context the files
 // change place in one go.
 func put(ctx context.Context, place *publish.Place, r *Result, o Options) error {
-	files := make([]publish.File, len(o.Outputs))
-	for i, out := range o.Outputs {
+	var outputs []Output
+	if o.Outputs != nil {
+		var err error
+		if outputs, err = o.Outputs(r.Night); err != nil {
+			return unfinished(o, err)
+		}
+	}
+	files := make([]publish.File, len(outputs))
+	for i, out := range outputs {
 		files[i] = publish.File{Name: out.Name, Write: func(w io.Writer) error { return out.Write(w, r.Night) }}
 		r.Files = append(r.Files, filepath.Join(o.Into, out.Name))
 	}
 	sort.Strings(r.Files)
-	if err := place.Publish(ctx, files); err != nil {
-		if ctx.Err() != nil {
-			return context.Cause(ctx)
-		}
-		return &Error{Kind: Unfinished, Msg: "nothing was published into " + o.Into, Err: err,
-			Try: "make room, close files of " + o.Into + " that are open elsewhere, then sweep again"}
+	gone, err := former(files, o)
+	if err != nil {
+		return unfinished(o, err)
+	}
+	err = place.Publish(ctx, files, gone)
+	if err != nil && ctx.Err() != nil {
+		return context.Cause(ctx)
+	}
+	if err != nil {
+		return unfinished(o, err)
 	}
 	return nil
+}
+
+func unfinished(o Options, err error) error {
+	return &Error{Kind: Unfinished, Msg: "nothing was published into " + o.Into, Err: err,
+		Try: "make room, close files of " + o.Into + " that are open elsewhere, then sweep again"}
+}
+
+// former lists the files of an earlier night that this night does not have.
+func former(files []publish.File, o Options) (gone []string, err error) {
+	if o.Former == nil {
+		return nil, nil
+	}
+	entries, err := os.ReadDir(o.Into)
+	for _, e := range entries {
+		has := slices.ContainsFunc(files, func(f publish.File) bool { return f.Name == e.Name() })
+		if !has && e.Type().IsRegular() && o.Former(e.Name()) {
+			gone = append(gone, e.Name())
+		}
+	}
+	return gone, err
 }

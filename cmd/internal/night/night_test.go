@@ -111,10 +111,11 @@ func TestAFailedOutputLeavesTheOldNight(t *testing.T) {
 	before := state(t, b.path("out"))
 	b.put("dumps/2.csv", aRunOf(2))
 	full := errors.New("no space left on device")
-	b.opts.Outputs = append(b.opts.Outputs, Output{"summary.pdf", func(w io.Writer, n *report.Night) error {
-		fmt.Fprint(w, "half a page")
-		return full
-	}})
+	b.outputs(Output{"evaluations.jsonl", func(w io.Writer, n *report.Night) error { return objects(w, n.Evaluations) }},
+		Output{"summary.pdf", func(w io.Writer, n *report.Night) error {
+			fmt.Fprint(w, "half a page")
+			return full
+		}})
 	e := b.refused(Unfinished)
 	if !errors.Is(e, full) || !strings.Contains(e.Error(), "nothing was published into "+b.path("out")) {
 		t.Errorf("got %v", e)
@@ -143,8 +144,9 @@ func TestAnInterruptedSweepLeavesTheOldNight(t *testing.T) {
 				return inventedRefit(data, name, sha)
 			}
 		case "output":
-			o.Outputs = append([]Output{}, o.Outputs...)
-			o.Outputs[0].Write = func(io.Writer, *report.Night) error { stop(stopped); return nil }
+			o.Outputs = func(*report.Night) ([]Output, error) {
+				return []Output{{"evaluations.jsonl", func(io.Writer, *report.Night) error { stop(stopped); return nil }}}, nil
+			}
 		}
 		if _, err := Sweep(ctx, o); !errors.Is(err, stopped) {
 			t.Errorf("stopped in %s: got error %v", at, err)
@@ -153,9 +155,34 @@ func TestAnInterruptedSweepLeavesTheOldNight(t *testing.T) {
 	}
 }
 
+// Files of an earlier, larger night go with the night that does not have them;
+// whatever else lies in OUT stays.
+func TestFilesOfAnEarlierNight(t *testing.T) {
+	b := newBench(t, map[string]string{"1.csv": aRunOf(1)})
+	part := func(name string) Output {
+		return Output{name, func(w io.Writer, _ *report.Night) error { _, err := io.WriteString(w, name); return err }}
+	}
+	b.opts.Former = func(name string) bool { return strings.HasPrefix(name, "part-") }
+	b.outputs(part("part-1"), part("part-2"), part("part-3"))
+	b.sweep()
+	b.put("out/notes.txt", "mine")
+	b.outputs(part("part-1"), part("part-2"))
+	result := b.sweep()
+	equal(t, "files told", len(result.Files), 2)
+	entries, err := os.ReadDir(b.path("out"))
+	if err != nil {
+		t.Fatal(err)
+	}
+	var got []string
+	for _, e := range entries {
+		got = append(got, e.Name())
+	}
+	equalLists(t, "OUT", got, []string{"notes.txt", "part-1", "part-2"})
+}
+
 func TestTwoSweepsAtOnce(t *testing.T) {
 	b := newBench(t, map[string]string{"1.csv": aRunOf(1)})
-	b.opts.Outputs[0].Write = func(io.Writer, *report.Night) error {
+	b.outputs(Output{"evaluations.jsonl", func(io.Writer, *report.Night) error {
 		second := b.opts
 		second.Outputs = nil
 		_, err := Sweep(t.Context(), second)
@@ -163,7 +190,7 @@ func TestTwoSweepsAtOnce(t *testing.T) {
 			t.Errorf("second sweep: got %v", err)
 		}
 		return nil
-	}
+	}})
 	b.sweep()
 }
 

@@ -13,6 +13,7 @@ package publish
 import (
 	"errors"
 	"io"
+	"io/fs"
 	"os"
 	"path/filepath"
 	"strings"
@@ -21,10 +22,11 @@ import (
 // Names inside the target that are the package's own. All begin with a dot,
 // so that a sweep of a folder above would pass over them.
 const (
-	stage  = ".lastdrop-stage"  // being written; worth nothing
-	ready  = ".lastdrop-ready"  // complete; on its way into the target
-	before = "before"           // in stage and ready: the files that are replaced
-	loose  = ".lastdrop-loose-" // beginning of the temporary names of Replace
+	stage   = ".lastdrop-stage"  // being written; worth nothing
+	ready   = ".lastdrop-ready"  // complete; on its way into the target
+	before  = "before"           // in stage and ready: the files that are replaced or removed
+	leaving = "leaving"          // in stage and ready: an empty file for each that is removed
+	loose   = ".lastdrop-loose-" // beginning of the temporary names of Replace
 )
 
 // ErrInUse is returned by Open when another process has the place.
@@ -104,14 +106,31 @@ func (p *Place) recover() error {
 	return nil
 }
 
-// finish moves what is still in ready into the target.
+// remove takes the files that leave out of the target.
+func (p *Place) remove() error {
+	entries, err := os.ReadDir(p.path(ready, leaving))
+	if err != nil && !errors.Is(err, fs.ErrNotExist) {
+		return err
+	}
+	for _, e := range entries {
+		if err := os.Remove(p.path(e.Name())); err != nil && !errors.Is(err, fs.ErrNotExist) {
+			return err
+		}
+	}
+	return nil
+}
+
+// finish removes what leaves and moves what is still in ready into the target.
 func (p *Place) finish() error {
+	if err := p.remove(); err != nil {
+		return err
+	}
 	entries, err := os.ReadDir(p.path(ready))
 	if err != nil {
 		return err
 	}
 	for _, e := range entries {
-		if e.Name() == before {
+		if e.Name() == before || e.Name() == leaving {
 			continue
 		}
 		if err := os.Rename(p.path(ready, e.Name()), p.path(e.Name())); err != nil {

@@ -12,17 +12,18 @@ import (
 	"golang.org/x/sync/errgroup"
 )
 
-// Publish puts the files in place, in the order given where one must come
-// first: files that a person may hold open, and that a system then refuses to
-// replace, are best put first. Files are laid out at the same time, so their
+// Publish puts the files in place and removes those named in gone, which are
+// of an earlier set and not of this one. They move in the order given where
+// one must come first: files that a person may hold open, and that a system
+// then refuses to replace, are best put first. Files are laid out at the same time, so their
 // Write functions must not share what they change. When it returns an error
 // the old files stand. A cancelled context is heeded until the files begin to
 // move, not after.
-func (p *Place) Publish(ctx context.Context, files []File) error {
+func (p *Place) Publish(ctx context.Context, files []File, gone []string) error {
 	if err := p.write(ctx, files); err != nil {
 		return err
 	}
-	if err := p.keep(files); err != nil {
+	if err := p.keep(files, gone); err != nil {
 		return err
 	}
 	if ctx.Err() != nil {
@@ -31,9 +32,12 @@ func (p *Place) Publish(ctx context.Context, files []File) error {
 	if err := os.Rename(p.path(stage), p.path(ready)); err != nil {
 		return err
 	}
+	if err := p.remove(); err != nil {
+		return errors.Join(err, p.undo(gone))
+	}
 	moved, err := p.move(files)
 	if err != nil {
-		return errors.Join(err, p.undo(moved))
+		return errors.Join(err, p.undo(append(moved, gone...)))
 	}
 	// What is left of ready is of no use and the next Open removes it.
 	os.RemoveAll(p.path(ready))
@@ -72,19 +76,30 @@ func writeFile(path string, write func(io.Writer) error) (err error) {
 	return f.Sync()
 }
 
-// keep puts the files that will be replaced beside the new ones, and brings
-// the names of both to the disk.
-func (p *Place) keep(files []File) error {
-	if err := os.Mkdir(p.path(stage, before), 0o777); err != nil {
-		return err
+// keep puts the files that will be replaced or removed beside the new ones,
+// notes which ones are removed, and brings all these names to the disk.
+func (p *Place) keep(files []File, gone []string) error {
+	for _, folder := range [...]string{before, leaving} {
+		if err := os.Mkdir(p.path(stage, folder), 0o777); err != nil {
+			return err
+		}
 	}
+	old := append([]string{}, gone...)
 	for _, f := range files {
-		err := link(p.path(f.Name), p.path(stage, before, f.Name))
+		old = append(old, f.Name)
+	}
+	for _, name := range old {
+		err := link(p.path(name), p.path(stage, before, name))
 		if err != nil && !errors.Is(err, fs.ErrNotExist) {
 			return err
 		}
 	}
-	return errors.Join(syncFolder(p.path(stage, before)), syncFolder(p.path(stage)))
+	for _, name := range gone {
+		if err := writeFile(p.path(stage, leaving, name), func(io.Writer) error { return nil }); err != nil {
+			return err
+		}
+	}
+	return errors.Join(syncFolder(p.path(stage, before)), syncFolder(p.path(stage, leaving)), syncFolder(p.path(stage)))
 }
 
 // link gives a file a second name, or copies it where the file system has no
@@ -105,7 +120,7 @@ func link(from, to string) error {
 }
 
 // move puts the files in place and returns those that it moved.
-func (p *Place) move(files []File) (moved []File, err error) {
+func (p *Place) move(files []File) (moved []string, err error) {
 	if err := syncFolder(p.dir); err != nil {
 		return nil, err
 	}
@@ -113,19 +128,21 @@ func (p *Place) move(files []File) (moved []File, err error) {
 		if err := os.Rename(p.path(ready, f.Name), p.path(f.Name)); err != nil {
 			return moved, err
 		}
-		moved = append(moved, f)
+		moved = append(moved, f.Name)
 	}
 	return moved, syncFolder(p.dir)
 }
 
 // undo puts the old files back. A kill in the middle of it leaves both nights
 // mixed until the next sweep: that takes two failures within a moment.
-func (p *Place) undo(moved []File) error {
+func (p *Place) undo(moved []string) error {
 	var errs []error
-	for _, f := range moved {
-		err := os.Rename(p.path(ready, before, f.Name), p.path(f.Name))
+	for _, name := range moved {
+		err := os.Rename(p.path(ready, before, name), p.path(name))
 		if errors.Is(err, fs.ErrNotExist) {
-			err = os.Remove(p.path(f.Name)) // there was none
+			if err = os.Remove(p.path(name)); errors.Is(err, fs.ErrNotExist) { // there was none
+				err = nil
+			}
 		}
 		errs = append(errs, err)
 	}

@@ -21,11 +21,16 @@ func text(name, body string) File {
 
 func publish(t *testing.T, dir string, files ...File) error {
 	t.Helper()
+	return publishWithout(t, dir, nil, files...)
+}
+
+func publishWithout(t *testing.T, dir string, gone []string, files ...File) error {
+	t.Helper()
 	p, err := Open(dir)
 	if err != nil {
 		t.Fatal(err)
 	}
-	err = p.Publish(t.Context(), files)
+	err = p.Publish(t.Context(), files, gone)
 	if err := p.Close(); err != nil {
 		t.Fatal(err)
 	}
@@ -75,11 +80,42 @@ func TestAllFilesOrNone(t *testing.T) {
 	want(t, "after a failed write", dir, "a=2", "b=2", "c=2")
 }
 
+// What leaves does so with the new files, and stays when they fail.
+func TestWhatLeaves(t *testing.T) {
+	dir := t.TempDir()
+	if err := publish(t, dir, text("a", "1"), text("b", "1"), text("c", "1")); err != nil {
+		t.Fatal(err)
+	}
+	full := errors.New("no space left on device")
+	err := publishWithout(t, dir, []string{"c"}, text("a", "2"), File{Name: "b", Write: func(io.Writer) error { return full }})
+	if !errors.Is(err, full) {
+		t.Errorf("failed write: got error %v", err)
+	}
+	want(t, "after a failed write", dir, "b=1", "c=1", "a=1")
+	if err := publishWithout(t, dir, []string{"c", "never there"}, text("a", "2"), text("b", "2")); err != nil {
+		t.Fatal(err)
+	}
+	want(t, "one less", dir, "b=2", "a=2")
+}
+
+// A folder that is not empty cannot be removed, as a file that is open
+// elsewhere cannot on some systems.
+func TestWhatCannotLeave(t *testing.T) {
+	dir := t.TempDir()
+	if err := errors.Join(publish(t, dir, text("a", "1"), text("b", "1")), os.MkdirAll(filepath.Join(dir, "full", "x"), 0o777)); err != nil {
+		t.Fatal(err)
+	}
+	if err := publishWithout(t, dir, []string{"b", "full"}, text("a", "2")); err == nil {
+		t.Error("no error")
+	}
+	want(t, "OUT", dir, "a=1", "b=1", "full="+readDirError(dir, "full"))
+}
+
 // A folder in the place of a file cannot be replaced, as an open workbook
 // cannot on some systems.
 func TestWhatMovedGoesBack(t *testing.T) {
 	dir := t.TempDir()
-	if err := publish(t, dir, text("a", "1")); err != nil {
+	if err := publish(t, dir, text("a", "1"), text("old", "1")); err != nil {
 		t.Fatal(err)
 	}
 	p, err := Open(dir)
@@ -88,10 +124,13 @@ func TestWhatMovedGoesBack(t *testing.T) {
 	}
 	defer p.Close()
 	files := []File{text("a", "2"), text("b", "2"), text("c", "2")}
-	if err := errors.Join(p.write(t.Context(), files), p.keep(files), os.Rename(p.path(stage), p.path(ready))); err != nil {
+	if err := errors.Join(p.write(t.Context(), files), p.keep(files, []string{"old"}), os.Rename(p.path(stage), p.path(ready))); err != nil {
 		t.Fatal(err)
 	}
 	if err := os.MkdirAll(filepath.Join(dir, "c", "full"), 0o777); err != nil {
+		t.Fatal(err)
+	}
+	if err := p.remove(); err != nil {
 		t.Fatal(err)
 	}
 	moved, err := p.move(files)
@@ -99,13 +138,13 @@ func TestWhatMovedGoesBack(t *testing.T) {
 		t.Fatalf("move: got %d moved, error %v, want 2 and an error", len(moved), err)
 	}
 	want(t, "half way", dir, ".lastdrop-ready="+readDirError(dir, ready), "a=2", "b=2", "c="+readDirError(dir, "c"))
-	if err := p.undo(moved); err != nil {
+	if err := p.undo(append(moved, "old")); err != nil {
 		t.Fatal(err)
 	}
 	if err := os.RemoveAll(filepath.Join(dir, "c")); err != nil {
 		t.Fatal(err)
 	}
-	want(t, "undone", dir, "a=1")
+	want(t, "undone", dir, "a=1", "old=1")
 }
 
 func readDirError(dir, name string) string {
@@ -135,6 +174,9 @@ func TestOpenFinishesOrForgets(t *testing.T) {
 		{"killed before the first move", map[string]string{"a": "1", ".lastdrop-ready/a": "2", ".lastdrop-ready/b": "2", ".lastdrop-ready/before/a": "1"}, []string{"a=2", "b=2"}},
 		{"killed between two moves", map[string]string{"a": "2", "b": "1", ".lastdrop-ready/b": "2", ".lastdrop-ready/before/a": "1", ".lastdrop-ready/before/b": "1"}, []string{"a=2", "b=2"}},
 		{"killed after the last", map[string]string{"a": "2", ".lastdrop-ready/before/a": "1"}, []string{"a=2"}},
+		{"killed before a removal", map[string]string{"a": "1", "old": "1", ".lastdrop-ready/a": "2", ".lastdrop-ready/leaving/old": "", ".lastdrop-ready/before/a": "1", ".lastdrop-ready/before/old": "1"}, []string{"a=2"}},
+		{"killed after a removal", map[string]string{"a": "1", ".lastdrop-ready/a": "2", ".lastdrop-ready/leaving/old": "", ".lastdrop-ready/before/old": "1"}, []string{"a=2"}},
+		{"killed with a removal not decided", map[string]string{"a": "1", "old": "1", ".lastdrop-stage/leaving/old": "", ".lastdrop-stage/before/old": "1"}, []string{"a=1", "old=1"}},
 		{"killed in Replace", map[string]string{"a": "1", ".lastdrop-loose-last": "ha"}, []string{"a=1"}},
 	} {
 		dir := t.TempDir()
@@ -163,7 +205,7 @@ func TestCancelledBeforeTheMove(t *testing.T) {
 	}
 	ctx, cancel := context.WithCancelCause(t.Context())
 	stopped := errors.New("stopped")
-	err = p.Publish(ctx, []File{{Name: "a", Write: func(io.Writer) error { cancel(stopped); return nil }}})
+	err = p.Publish(ctx, []File{{Name: "a", Write: func(io.Writer) error { cancel(stopped); return nil }}}, nil)
 	if !errors.Is(err, stopped) {
 		t.Errorf("got error %v", err)
 	}
