@@ -16,7 +16,7 @@ const Minus = "−"
 const Dash = "–"
 
 // VolumeDecimals returns how many decimals of a volume in mL its standard
-// uncertainty u (mL) supports, between 1 and 4: the place of the first figure
+// uncertainty u (mL) supports, between 2 and 4: the place of the first figure
 // of u, or of the second where the first is a 1 or 2 and rounding to it alone
 // would change u by up to a half. A fourth decimal is shown for its first
 // figure only: burettes print three. Without a usable u it returns 3.
@@ -32,7 +32,7 @@ func VolumeDecimals(u float64) int {
 	if u*math.Pow(10, place) < 3 && place < 3 {
 		place++
 	}
-	return min(max(int(place), 1), 4)
+	return min(max(int(place), 2), 4)
 }
 
 // StepDecimals returns how many decimals a display step has: 0.01 gives 2.

@@ -21,9 +21,9 @@ func (n *Night) mustDo() string {
 	case runs == 0:
 		return "No run could be read, " + Number(unread) + plural(unread, " is", " are") + " unread."
 	case runs == 1 && disputed+doubtful+unread == 0:
-		return "Nothing to do: the one run is sound."
+		return "Nothing to settle: the one run is sound."
 	case disputed+doubtful+unread == 0:
-		return "Nothing to do: all " + Number(runs) + " runs are sound."
+		return "Nothing to settle: all " + Number(runs) + " runs are sound."
 	}
 	var said []string
 	if disputed > 0 {
@@ -37,7 +37,11 @@ func (n *Night) mustDo() string {
 		said = append(said, who+plural(doubtful, " needs", " need")+" a look")
 	}
 	if unread > 0 {
-		said = append(said, Number(unread)+plural(unread, " is", " are")+" unread")
+		what := Number(unread)
+		if len(said) == 0 {
+			what = Some(unread, "dump or run", "dumps or runs")
+		}
+		said = append(said, what+plural(unread, " is", " are")+" unread")
 	}
 	return Upper(strings.Join(said, ", ")) + "."
 }

@@ -60,9 +60,9 @@ func TestHeadline(t *testing.T) {
 		{night(1, 1, 1, 1), "One run must be settled, one needs a look, one is unread.", "One of three runs carries no objection, which is not an approval. What is unread has no result."},
 		{night(13, 0, 0, 0), "13 runs must be settled.", "No run is without objection."},
 		{night(0, 1, 1, 0), "One run needs a look.", "One of two runs carries no objection, which is not an approval."},
-		{night(0, 0, 12, 0), "Nothing to do: all twelve runs are sound.", "All twelve runs carry no objection, which is not an approval."},
-		{night(0, 0, 1, 0), "Nothing to do: the one run is sound.", "The run carries no objection, which is not an approval."},
-		{night(0, 0, 1, 1), "One is unread.", "The run carries no objection, which is not an approval. What is unread has no result."},
+		{night(0, 0, 12, 0), "Nothing to settle: all twelve runs are sound.", "All twelve runs carry no objection, which is not an approval."},
+		{night(0, 0, 1, 0), "Nothing to settle: the one run is sound.", "The run carries no objection, which is not an approval."},
+		{night(0, 0, 1, 1), "One dump or run is unread.", "The run carries no objection, which is not an approval. What is unread has no result."},
 		{night(0, 0, 0, 2), "No run could be read, two are unread.", "What is unread has no result."},
 		{night(0, 0, 0, 0), "There was no run to read.", "Nothing is to be done."},
 	} {

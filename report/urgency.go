@@ -1,10 +1,14 @@
 package report
 
-import "sort"
+import (
+	"math"
+	"sort"
+)
 
 // Urgent returns the evaluations that somebody must look at, most urgent
-// first: disputed before doubtful, then by the concern of the heaviest flag,
-// then in the night's own order.
+// first: disputed before doubtful; then those whose refit and indicated
+// endpoint differ by more than the limit, the most first; then by the concern
+// of the heaviest flag; then in the night's own order.
 func (n *Night) Urgent() []*Evaluation {
 	var urgent []*Evaluation
 	for i := range n.Evaluations {
@@ -12,14 +16,43 @@ func (n *Night) Urgent() []*Evaluation {
 			urgent = append(urgent, &n.Evaluations[i])
 		}
 	}
-	sort.SliceStable(urgent, func(i, j int) bool {
-		a, b := urgent[i], urgent[j]
-		if a.Verdict != b.Verdict {
-			return a.Verdict == VerdictDisputed
-		}
-		return a.concern() < b.concern()
-	})
+	sort.SliceStable(urgent, func(i, j int) bool { return urgent[i].MoreUrgent(urgent[j]) })
 	return urgent
+}
+
+// MoreUrgent is the order of Urgent for two evaluations; sound ones and
+// unknown verdicts have their place in it too.
+func (e *Evaluation) MoreUrgent(than *Evaluation) bool {
+	if a, b := rank(e.Verdict), rank(than.Verdict); a != b {
+		return a > b
+	}
+	if a, b := e.apart(), than.apart(); a != b && (a > 1 || b > 1) {
+		return a > b
+	}
+	return e.concern() < than.concern()
+}
+
+// rank orders verdicts; an unknown one counts as disputed.
+func rank(v Verdict) int {
+	switch v {
+	case VerdictSound:
+		return 0
+	case VerdictDoubtful:
+		return 1
+	}
+	return 2
+}
+
+// apart is the largest difference of like kinds in agreement limits, 0
+// without one.
+func (e *Evaluation) apart() float64 {
+	most := 0.0
+	for i := range e.Endpoints {
+		if d := e.Endpoints[i].Differs; d != nil && d.LimitML > 0 {
+			most = math.Max(most, math.Abs(d.ML)/d.LimitML)
+		}
+	}
+	return most
 }
 
 func (e *Evaluation) concern() int {

@@ -17,7 +17,6 @@ type field struct {
 	format   string // of a time
 	suffixes []string
 	empty    schemas.Empty
-	refills  bool
 	shared   bool
 	values   []string // texts of a status
 	table    *table   // the first that has it

@@ -12,15 +12,14 @@ import (
 
 // fact is one statement of the dump that the draft maps.
 type fact struct {
-	name     string // of the fact, or "indicated"
-	key      string
-	value    string
-	unit     string
-	suffix   string
-	format   string
-	formats  []string // several that fit; nobody can tell which
-	fallback string   // what the fact always is, for facts that no line states
-	out      string   // why it is not mapped; "" when it is
+	name    string // of the fact, or "indicated"
+	key     string
+	value   string
+	unit    string
+	suffix  string
+	format  string
+	formats []string // several that fit; nobody can tell which
+	out     string   // why it is not mapped; "" when it is
 }
 
 // statement is a line of key and value, of one of the kinds.

@@ -70,6 +70,24 @@ func (d *document) besides() string {
 	return strings.Join(said, " ")
 }
 
+// firstDump is the dump of the most urgent run.
+func (d *document) firstDump() string {
+	if len(d.urgent) == 0 {
+		return ""
+	}
+	return d.n.Evaluations[d.urgent[0]].Dump
+}
+
+// lookLabel says what a look command is for and where it works: a page cannot
+// know where the swept folders lie.
+func lookLabel(dump string) string {
+	folder, _, found := strings.Cut(dump, "/")
+	if !found {
+		return "To look closer:"
+	}
+	return "To look closer, where " + figure.Shorten(bodyStyle, folder, 30) + " lies:"
+}
+
 // lookAt is the command that shows the run's dump, "" for a run without one.
 func lookAt(e *report.Evaluation) string {
 	if e.Dump == "" {
@@ -102,7 +120,7 @@ func (d *document) headlineItem() item {
 		y = paragraph(s, left, y+11, 6.4, head, first)
 		y = paragraph(s, left, y, leadLead, leadStyle, second)
 		if next != "" {
-			command(s, left, y+0.6, "To look closer:", next)
+			command(s, left, y+0.6, lookLabel(d.firstDump()), next)
 		}
 	}}
 }

@@ -148,7 +148,7 @@ func (d *document) listRow(i int, half float64, firstOf bool) item {
 func sampleLines(e *report.Evaluation) []string {
 	const w = reasonX - sampleX - 2
 	if e.Facts.Sample == "" {
-		return []string{"no sample named"}
+		return []string{"no sample stated"}
 	}
 	for _, share := range [...]float64{2, 1.85, 1.7, 1.5} {
 		if lines := figure.Wrap(titleStyle, figure.Shorten(titleStyle, e.Facts.Sample, share*w), w); len(lines) <= 2 {

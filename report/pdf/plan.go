@@ -38,11 +38,7 @@ func (d *Book) choose(all bool) {
 		}
 	}
 	sort.SliceStable(d.urgent, func(a, b int) bool {
-		x, y := &d.n.Evaluations[d.urgent[a]], &d.n.Evaluations[d.urgent[b]]
-		if u, v := urgency(x.Verdict), urgency(y.Verdict); u != v {
-			return u > v
-		}
-		return concern(x) < concern(y)
+		return d.n.Evaluations[d.urgent[a]].MoreUrgent(&d.n.Evaluations[d.urgent[b]])
 	})
 	sort.SliceStable(d.small, func(a, b int) bool {
 		x, y := &d.n.Evaluations[d.small[a]], &d.n.Evaluations[d.small[b]]
@@ -53,17 +49,6 @@ func (d *Book) choose(all bool) {
 	})
 }
 
-// urgency ranks verdicts; an unknown one counts as disputed.
-func urgency(v report.Verdict) int {
-	switch v {
-	case report.VerdictSound:
-		return 0
-	case report.VerdictDoubtful:
-		return 1
-	}
-	return 2
-}
-
 // heaviest returns the flag that makes the verdict, nil when there is none.
 func heaviest(e *report.Evaluation) *report.Flag {
 	for i := range e.Flags {
@@ -72,14 +57,6 @@ func heaviest(e *report.Evaluation) *report.Flag {
 		}
 	}
 	return nil
-}
-
-// concern ranks a run among those of its verdict, first = 0.
-func concern(e *report.Evaluation) int {
-	if f := heaviest(e); f != nil {
-		return report.Concern(f.Flag)
-	}
-	return report.Concern("")
 }
 
 // planRuns adds the large pages, with a bookmark before each verdict.

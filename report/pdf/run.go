@@ -138,7 +138,7 @@ func hash(sha string) string {
 
 func sampleName(e *report.Evaluation) string {
 	if e.Facts.Sample == "" {
-		return "no sample named"
+		return "no sample stated"
 	}
 	return e.Facts.Sample
 }
@@ -156,7 +156,7 @@ func (r *runPage) drawHead(s *figure.Sheet) {
 	s.Text(x+2.4, 33.2, rest, identity)
 	y := paragraph(s, headX, 38.2, leadLead, leadStyle, h.do)
 	if r.e.Dump != "" {
-		command(s, headX, y+0.4, "To look closer:", look(r.e.Dump))
+		command(s, headX, y+0.4, lookLabel(r.e.Dump), look(r.e.Dump))
 	}
 	h.figures.draw(s, y+0.4+6)
 }

@@ -158,8 +158,8 @@ func TestPlaces(t *testing.T) {
 	for _, i := range d.large {
 		order = append(order, n.Evaluations[i].ID)
 	}
-	// disagrees, no-endpoint, overshoot; then wide-interval twice, dilution-unknown
-	want := "51ad90c2b8f4 0d4f6c28a1b5 9f31c07a52de 77aa01b2c3d4 77aa01b2c3d4 c4d80b1e77a3"
+	// disagrees and overshoot, whose endpoints lie apart, then no-endpoint; then wide-interval twice, dilution-unknown
+	want := "51ad90c2b8f4 9f31c07a52de 0d4f6c28a1b5 77aa01b2c3d4 77aa01b2c3d4 c4d80b1e77a3"
 	if got := strings.Join(order, " "); got != want {
 		t.Errorf("order %s, want %s", got, want)
 	}
@@ -186,7 +186,7 @@ func TestHeadlines(t *testing.T) {
 	}{
 		{night(4, 6, 50, 3), "Four runs must be settled, six need a look, three are unread.", "50 of 60 runs carry no objection, which is not an approval. What is unread has no result. Begin with run 0123456789ab."},
 		{night(1, 0, 0, 0), "One run must be settled.", "No run is without objection. Begin with run 0123456789ab."},
-		{night(0, 0, 9, 0), "Nothing to do: all nine runs are sound.", "All nine runs carry no objection, which is not an approval."},
+		{night(0, 0, 9, 0), "Nothing to settle: all nine runs are sound.", "All nine runs carry no objection, which is not an approval."},
 		{night(0, 0, 0, 0), "There was no run to read.", "Nothing is to be done."},
 		{night(0, 0, 0, 2), "No run could be read, two are unread.", "What is unread has no result."},
 	} {

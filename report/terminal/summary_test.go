@@ -27,7 +27,7 @@ func TestMailOfAQuietNight(t *testing.T) {
 	n := &report.Night{Lastdrop: "0.1.0", Date: "2031-04-03", Evaluations: []report.Evaluation{sound}}
 	// Written by hand after the page language: what happened first, the
 	// caution last.
-	want := `Nothing to do: the one run is sound.
+	want := `Nothing to settle: the one run is sound.
 The run carries no objection, which is not an approval.
 Published 3 April 2031.
 

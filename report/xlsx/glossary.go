@@ -12,7 +12,7 @@ var words = [...][2]string{
 	{"indicated", "what the instrument itself says"},
 	{"refit", "what lastdrop computes from the readings"},
 	{"difference", "refit minus indicated endpoint. Only like kinds are compared; empty where they are unlike"},
-	{"agreement limit", "the largest difference that is not disputed"},
+	{"agreement limit", "a difference of like kinds above it disputes the run; an inflection must also lie outside the bracket of the refit"},
 	{"u", "standard uncertainty (k = 1) of the refit from the readings only; burette, titrant and aliquot are not included"},
 	{"95 % low, high", "the interval that holds the endpoint in 95 of 100 cases, from the readings only"},
 	{"bracket", "the two readings on either side of an endpoint"},
