@@ -18,6 +18,9 @@ func (k *cleaned) stuckReadings(stepU float64, l Limits) {
 			moved := k.movedWhileEqual(i, j)
 			if limit := math.Max(l.StuckSteps*stepU, l.StuckNoise*k.sd(i)); moved > limit {
 				for m := i + 1; m <= j; m++ {
+					if drop[m] { // already told as frozen to the end
+						continue
+					}
 					drop[m] = true
 					k.leftOut = append(k.leftOut, LeftOut{At: k.at[m], Why: LeftStuck, Figure: moved * k.decade, Limit: limit * k.decade})
 				}
