@@ -187,7 +187,7 @@ func (g *smallGroup) drawPicture(a *figure.Axes, e *report.Evaluation) {
 // apart returns the readings used and left out, without those that would lie
 // on the one before.
 func apart(a *figure.Axes, dots []report.Dot) (used, out []figure.Point) {
-	const least = 0.5 // mm
+	const least = 0.6 // mm, the size of a disc
 	last := figure.Point{X: -1e9}
 	for _, d := range dots {
 		p := figure.Point{X: d.VolumeML, Y: d.Value}
