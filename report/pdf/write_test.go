@@ -335,11 +335,14 @@ func TestReplacedSigns(t *testing.T) {
 	}
 }
 
-// TestBytesAPage: no more than 12 kB a page and one set of fonts.
+// TestBytesAPage: no more than 12 kB a page with one set of fonts, also of a
+// short night.
 func TestBytesAPage(t *testing.T) {
-	file, res := write(t, seedNight(), Options{})
-	if per := len(file) / res.Pages; per > 12_000 {
-		t.Errorf("%d bytes a page", per)
+	for name, n := range map[string]*report.Night{"40 runs": seedNight(), "demo": demoNight()} {
+		file, res := write(t, n, Options{})
+		if per := len(file) / res.Pages; per > 12_000 {
+			t.Errorf("%s: %d bytes a page", name, per)
+		}
 	}
 }
 

@@ -38,10 +38,15 @@ func stream(text string) string {
 }
 
 // Every object is found at its place in the packed file; streams hold what
-// they held, and those that were compressed are left alone.
+// they held, those that were compressed before too.
 func TestPack(t *testing.T) {
 	page := strings.Repeat("1 0 0 rg\n>>\nstream\nendstream\nendobj\nxref\n", 40) // no text may look like the file's own
-	done := "<</Length 4\n/Filter /FlateDecode\n>>\nstream\nabcd\nendstream"
+	font := strings.Repeat("glyf", 30)
+	var fast bytes.Buffer
+	z := zlib.NewWriter(&fast)
+	z.Write([]byte(font))
+	z.Close()
+	done := fmt.Sprintf("<</Length %d\n/Filter /FlateDecode\n/Length1 120\n>>\nstream\n%s\nendstream", fast.Len(), fast.String())
 	var b bytes.Buffer
 	if err := pack(file(stream(page), "<</Type /Page>>", done, stream("")), &b); err != nil {
 		t.Fatal(err)
@@ -50,7 +55,7 @@ func TestPack(t *testing.T) {
 	if err != nil || len(offsets) != 5 || !bytes.HasSuffix(b.Bytes(), []byte(fmt.Sprintf("startxref\n%d\n%%%%EOF\n", xref))) {
 		t.Fatalf("%d objects, %v", len(offsets), err)
 	}
-	for n, want := range []string{"<</Type /Pages\n>>", page, "<</Type /Page>>", done, ""} {
+	for n, want := range []string{"<</Type /Pages\n>>", page, "<</Type /Page>>", font, ""} {
 		object := b.Bytes()[offsets[n]:]
 		begin := fmt.Sprintf("%d 0 obj\n", n+1)
 		if !bytes.HasPrefix(object, []byte(begin)) {
@@ -58,11 +63,15 @@ func TestPack(t *testing.T) {
 			continue
 		}
 		body := object[len(begin):]
-		if n == 1 || n == 4 {
+		if n == 1 || n >= 3 {
 			if !bytes.HasPrefix(body, []byte("<</Filter /FlateDecode /Length ")) {
 				t.Fatalf("object %d is not compressed: %.60q", n+1, body)
 			}
-			_, body, _ = bytes.Cut(body, []byte(">>\nstream\n"))
+			head, stream, _ := bytes.Cut(body, []byte(">>\nstream\n"))
+			if bytes.Contains(head, []byte("/Length1 120")) != (n == 3) {
+				t.Errorf("object %d begins with %q", n+1, head)
+			}
+			body = stream
 			z, err := zlib.NewReader(bytes.NewReader(body))
 			if err != nil {
 				t.Fatal(err)
