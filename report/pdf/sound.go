@@ -65,6 +65,9 @@ func (d *document) planSmall() {
 // nothing is to be done and all fit there: that night is one page. Otherwise
 // the flow is as before.
 func (d *document) smallBelow(f *flow) *flow {
+	if len(d.small) == 0 || len(d.small) > smallMost || len(f.pages) > 1 {
+		return f
+	}
 	g := &flow{pages: [][]placed{append([]placed(nil), f.pages[0]...)}, y: f.y, top: f.top, bottom: f.bottom}
 	g.add(air, item{height: 12.5, draw: func(s *figure.Sheet, y float64) {
 		blockTitle(s, left, right, y, "Sound runs", "look for the one that is not like the others")
@@ -73,12 +76,15 @@ func (d *document) smallBelow(f *flow) *flow {
 	for _, group := range d.smallGroups() {
 		g.addSection(3, group.section())
 	}
-	if len(f.pages) > 1 || len(g.pages) > 1 || len(d.small) == 0 {
+	if len(g.pages) > 1 {
 		return f
 	}
 	d.smallAt = stretch{1, 1, 1, 1}
 	return g
 }
+
+// smallMost is more pictures than any front page has room for.
+const smallMost = 24
 
 // smallNotes explain the pictures.
 var smallNotes = [...]string{
