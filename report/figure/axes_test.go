@@ -65,7 +65,7 @@ func TestThinKeepsShape(t *testing.T) {
 		x := float64(i) / 6
 		pts = append(pts, Point{x, 40 + 35*math.Tanh((x-60)/1.5)})
 	}
-	got := thin(pts)
+	got := thin(pts, thinMM)
 	if len(got) > 150 || got[0] != pts[0] || got[len(got)-1] != pts[600] {
 		t.Fatalf("%d points of %d", len(got), len(pts))
 	}

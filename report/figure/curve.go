@@ -10,14 +10,15 @@ func short(v float64) string { return strconv.FormatFloat(v, 'g', 4, 64) }
 
 // Curve draws a line through points in data units, clipped to the area.
 func (a *Axes) Curve(pts []Point, st Stroke) {
-	for _, part := range a.parts(pts) {
+	for _, part := range a.parts(pts, thinFor(st)) {
 		a.Sheet.Stroke(st, part...)
 		a.Room.TakeLine(part)
 	}
 }
 
-// parts maps a curve to mm, clips it to the area and thins it.
-func (a *Axes) parts(pts []Point) [][]Point {
+// parts maps a curve to mm, clips it to the area and thins it to lie within
+// give mm of itself.
+func (a *Axes) parts(pts []Point, give float64) [][]Point {
 	var out [][]Point
 	var part []Point
 	for i := 1; i < len(pts); i++ {
@@ -27,17 +28,17 @@ func (a *Axes) parts(pts []Point) [][]Point {
 		}
 		if n := len(part); n == 0 || part[n-1] != p {
 			if n > 1 {
-				out = append(out, thin(part))
+				out = append(out, thin(part, give))
 			}
 			part = append(make([]Point, 0, len(pts)-i+1), p)
 		}
 		part = append(part, q)
 		if !whole {
-			out, part = append(out, thin(part)), nil
+			out, part = append(out, thin(part, give)), nil
 		}
 	}
 	if len(part) > 1 {
-		out = append(out, thin(part))
+		out = append(out, thin(part, give))
 	}
 	return out
 }
@@ -88,15 +89,18 @@ func (b Box) inside(p Point) Point {
 // the finest line.
 const thinMM = 0.04
 
+// thinFor is that for a line of some width: a fifth of it where that is more.
+func thinFor(st Stroke) float64 { return max(thinMM, MM(st.WidthPt)/5) }
+
 // thin leaves out points that lie on the line between their neighbours.
-func thin(pts []Point) []Point {
+func thin(pts []Point, give float64) []Point {
 	if len(pts) < 3 {
 		return pts
 	}
 	out := append(make([]Point, 0, 1+len(pts)/3), pts[0])
 	from := 0
 	for i := 2; i < len(pts); i++ {
-		if !straight(pts[from : i+1]) {
+		if !straight(pts[from:i+1], give) {
 			out = append(out, pts[i-1])
 			from = i - 1
 		}
@@ -105,7 +109,7 @@ func thin(pts []Point) []Point {
 }
 
 // straight tells whether all points lie near the line from first to last.
-func straight(pts []Point) bool {
+func straight(pts []Point, give float64) bool {
 	a, b := pts[0], pts[len(pts)-1]
 	dx, dy := b.X-a.X, b.Y-a.Y
 	length := math.Hypot(dx, dy)
@@ -113,7 +117,7 @@ func straight(pts []Point) bool {
 		return length < 1e-9
 	}
 	for _, p := range pts[1 : len(pts)-1] {
-		if off := math.Abs((p.X-a.X)*dy-(p.Y-a.Y)*dx) / length; !(off <= thinMM) {
+		if off := math.Abs((p.X-a.X)*dy-(p.Y-a.Y)*dx) / length; !(off <= give) {
 			return false
 		}
 	}
@@ -134,7 +138,7 @@ func (a *Axes) Floor(pts []Point, highest, share float64, ink Ink) {
 		a.holds(p)
 	}
 	f := Axes{Sheet: a.Sheet, Area: a.Area, X: a.X, Y: Scale{0, highest, a.Area.Bottom, a.Area.Bottom - share*a.Area.Height()}}
-	for _, part := range f.parts(widened(pts, leastPeakMM/2/a.Area.Width()*(a.X.To-a.X.From))) {
+	for _, part := range f.parts(widened(pts, leastPeakMM/2/a.Area.Width()*(a.X.To-a.X.From)), thinMM) {
 		first, last := part[0], part[len(part)-1]
 		a.Room.TakeLine(part)
 		a.Sheet.Fill(ink, append([]Point{{first.X, a.Area.Bottom}}, append(part, Point{last.X, a.Area.Bottom})...)...)

@@ -49,11 +49,18 @@ var (
 func (d *document) footTop() float64 { return d.height - 20.6 }
 func (d *document) foot() float64    { return d.footTop() - 3 }
 
-// frame draws header and footer. identity stands before the page number, basis
-// at the foot: what the page was made from. The footer is drawn when the
-// returned function is called: last, so that text is extracted in the order of
-// reading.
+// frame draws header and footer when the returned function is called: last, so
+// that the text of a page, read out or extracted, begins with its headline.
+// identity stands before the page number, basis at the foot: what the page was
+// made from.
 func (d *document) frame(s *figure.Sheet, number int, identity, basis string) (finish func()) {
+	return func() {
+		d.header(s, number, identity)
+		d.footer(s, basis)
+	}
+}
+
+func (d *document) header(s *figure.Sheet, number int, identity string) {
 	pageText := "page " + whole(number) + " of " + whole(len(d.pages))
 	if n := len(d.volumes); n > 1 {
 		pageText += ", volume " + whole(d.volume) + " of " + whole(n)
@@ -62,7 +69,7 @@ func (d *document) frame(s *figure.Sheet, number int, identity, basis string) (f
 	if identity != "" {
 		edge -= 3 + figure.TextWidth(monoNote, identity)
 	}
-	end := s.Block("header", figure.Box{Left: left, Top: 10, Right: right, Bottom: 17})
+	defer s.Block("header", figure.Box{Left: left, Top: 10, Right: right, Bottom: 17})()
 	s.Drop(left+1.6, 13.2, 4)
 	x := s.Text(left+4.2, 14.6, titleStyle, "lastdrop")
 	when := d.when()
@@ -73,9 +80,7 @@ func (d *document) frame(s *figure.Sheet, number int, identity, basis string) (f
 	s.Text(x+3, 14.6, bodyStyle.In(figure.Second), when)
 	s.Text(edge, 14.6, monoNote, identity)
 	s.TextRight(right, 14.6, bodyStyle, pageText)
-	end()
 	s.Rule(blockRule, left, right, 17)
-	return func() { d.footer(s, basis) }
 }
 
 // when tells the date of the publication and the days of the runs.

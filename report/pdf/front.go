@@ -23,6 +23,9 @@ func (d *document) planFront() {
 	f.addSection(air, list)
 	f.addSection(air, d.proceduresSection())
 	at := f.addSection(air, d.unreadSection())
+	if len(d.urgent) == 0 && at < 0 {
+		f = d.smallBelow(f)
+	}
 	if at >= 0 {
 		d.unreadAt = stretch{1, at + 1, 1, at + 1}
 	}
@@ -37,7 +40,7 @@ func (d *document) addFront(f *flow, bookmark string) {
 	for i, items := range f.pages {
 		p := page{what: "front page", draw: func(s *figure.Sheet, number int) {
 			defer d.frame(s, number, "", "")()
-			drawItems(s, items, left)
+			drawItems(s, items)
 		}}
 		if i == 0 {
 			p.bookmarks = []paper.Bookmark{{Text: bookmark}}
@@ -170,8 +173,10 @@ func (d *document) totals() [4]total {
 		out[2].where = d.where(d.smallAt)
 	}
 	out[3].where = d.where(d.unreadAt)
-	if d.unreadAt.page == 1 {
-		out[3].where = "below"
+	for i, at := range [...]stretch{2: d.smallAt, 3: d.unreadAt} {
+		if at.volume == 1 && at.page == 1 {
+			out[i].where = "below"
+		}
 	}
 	return out
 }

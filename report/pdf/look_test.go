@@ -18,14 +18,20 @@ func TestLook(t *testing.T) {
 	}
 	for name, c := range nights() {
 		for sheet, letter := range map[string]bool{"a4": false, "letter": true} {
-			var b bytes.Buffer
-			res, err := writeAll(&b, c.night, Options{Letter: letter, Pages: c.pages})
+			book, err := Plan(c.night, Options{Letter: letter, Pages: c.pages})
 			if err != nil {
 				t.Fatal(name, err)
 			}
-			t.Log(name, sheet, res.Pages, "pages", b.Len()/res.Pages, "bytes a page", res.Failed, res.Replaced)
-			if err := os.WriteFile(filepath.Join(dir, name+"-"+sheet+".pdf"), b.Bytes(), 0o644); err != nil {
-				t.Fatal(err)
+			for v := 1; v <= book.Volumes(); v++ {
+				var b bytes.Buffer
+				res, err := book.Write(&b, v)
+				if err != nil {
+					t.Fatal(name, err)
+				}
+				t.Log(name, sheet, "volume", v, res.Pages, "pages", b.Len()/res.Pages, "bytes a page", res.Failed, res.Replaced)
+				if err := os.WriteFile(filepath.Join(dir, name+"-"+sheet+"-"+FileName(v)), b.Bytes(), 0o644); err != nil {
+					t.Fatal(err)
+				}
 			}
 		}
 	}

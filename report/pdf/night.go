@@ -175,6 +175,10 @@ func (d *document) drawStrip(s *figure.Sheet, g *group, half, y float64) {
 	s.TextRight(valueEnd, y+3.4, st, text)
 }
 
+// unreadMost is how many unread dumps the pages list; a folder of the wrong
+// files must not bury the pages of the runs.
+const unreadMost = 60
+
 // unreadX is where reason and next step of an unread dump stand, mm.
 const unreadX = 82.0
 
@@ -183,8 +187,13 @@ func (d *document) unreadSection() section {
 	sec := section{head: item{height: 6, draw: func(s *figure.Sheet, y float64) {
 		blockTitle(s, left, right, y, "Unread", "place in the dump, reason and next step; these have no result")
 	}}}
-	for i := range d.n.Unread {
+	for i := range d.n.Unread[:min(len(d.n.Unread), unreadMost)] {
 		sec.rows = append(sec.rows, unreadRow(&d.n.Unread[i]))
+	}
+	if more := len(d.n.Unread) - unreadMost; more > 0 {
+		sec.rows = append(sec.rows, item{height: 5.8, draw: func(s *figure.Sheet, y float64) {
+			s.Text(sampleX, y+3.9, bodyStyle, "And "+whole(more)+" more, in the sheet Unread of summary.xlsx and in unread.jsonl.")
+		}})
 	}
 	return sec
 }

@@ -108,7 +108,8 @@ func runFacts(e *report.Evaluation) []string {
 // item is a strip of a page: its height, and how to draw it from a height on.
 type item struct {
 	height float64
-	runs   int // how many runs it pictures
+	runs   int  // how many runs it pictures
+	wide   bool // it reaches into the left margin
 	draw   func(s *figure.Sheet, y float64)
 }
 
@@ -200,9 +201,13 @@ func (f *flow) close(sec section) {
 	}
 }
 
-// drawItems draws a page of a flow; from is how far left its items reach.
-func drawItems(s *figure.Sheet, items []placed, from float64) {
+// drawItems draws a page of a flow.
+func drawItems(s *figure.Sheet, items []placed) {
 	for _, it := range items {
+		from := left
+		if it.wide {
+			from -= 10
+		}
 		end := s.Block("strip", figure.Box{Left: from, Top: it.y, Right: right, Bottom: it.y + it.height})
 		it.draw(s, it.y)
 		end()

@@ -31,7 +31,7 @@ type smallGroup struct {
 
 // planSmall plans the small pictures of sound runs.
 func (d *document) planSmall() {
-	if len(d.small) == 0 {
+	if len(d.small) == 0 || d.smallAt.volume > 0 {
 		return
 	}
 	f := newFlow(smallHead, smallHead, d.foot())
@@ -52,7 +52,7 @@ func (d *document) planSmall() {
 			defer d.frame(s, number, "", "")()
 			d.thumb(s, report.VerdictSound)
 			d.drawSmallHead(s, from, to)
-			drawItems(s, items, left-10)
+			drawItems(s, items)
 		}}
 		if i == 0 {
 			p.bookmarks = []paper.Bookmark{{Text: "sound, small pictures"}}
@@ -61,14 +61,45 @@ func (d *document) planSmall() {
 	}
 }
 
+// smallBelow puts the small pictures under the blocks of the front page where
+// nothing is to be done and all fit there: that night is one page. Otherwise
+// the flow is as before.
+func (d *document) smallBelow(f *flow) *flow {
+	if len(d.small) == 0 || len(d.small) > smallMost || len(f.pages) > 1 {
+		return f
+	}
+	g := &flow{pages: [][]placed{append([]placed(nil), f.pages[0]...)}, y: f.y, top: f.top, bottom: f.bottom}
+	g.add(air, item{height: 12.5, draw: func(s *figure.Sheet, y float64) {
+		blockTitle(s, left, right, y, "Sound runs", "look for the one that is not like the others")
+		paragraph(s, left, y+4.3+4, noteLead, noteStyle, smallNotes[:])
+	}})
+	for _, group := range d.smallGroups() {
+		g.addSection(3, group.section())
+	}
+	if len(g.pages) > 1 {
+		return f
+	}
+	d.smallAt = stretch{1, 1, 1, 1}
+	return g
+}
+
+// smallMost is more pictures than any front page has room for.
+const smallMost = 24
+
+// smallNotes explain the pictures.
+var smallNotes = [...]string{
+	"In the order they were run. Grey: the median curve of the procedure, laid on the endpoint. Under each picture: refit filled, indicated open.",
+	"Figures: endpoint in mL; refit − indicated of like kinds, % of the refit.",
+}
+
 func (d *document) drawSmallHead(s *figure.Sheet, from, to int) {
 	defer s.Block("small head", figure.Box{Left: left, Top: 20, Right: right, Bottom: smallHead})()
 	s.Urgent(figure.Calm, left+3.2, 25, 6)
 	x := s.Text(headX, 27, headStyle.As(figure.Bold), "sound")
 	s.Text(x+2.4, 27, headStyle, "runs "+whole(from)+" to "+whole(to)+" of "+whole(len(d.small)))
 	s.Text(headX, 33.4, leadStyle, capital(report.SoundMeans)+". Look for the one that is not like the others.")
-	s.Text(headX, 37.8, noteStyle, "In the order they were run. Grey: the median curve of the procedure, laid on the endpoint. Under each picture: refit filled, indicated open.")
-	s.Text(headX, 37.8+noteLead, noteStyle, "Figures: endpoint in mL; refit − indicated of like kinds, % of the refit.")
+	s.Text(headX, 37.8, noteStyle, smallNotes[0])
+	s.Text(headX, 37.8+noteLead, noteStyle, smallNotes[1])
 }
 
 // smallGroups cuts the sound runs where procedure or signal changes.
@@ -125,7 +156,7 @@ func (g *smallGroup) section() section {
 		}
 		blockTitle(s, left, right, y, figure.Shorten(titleStyle, procedureName(e), 90), note)
 	}}}
-	sec.foot = item{height: 4, draw: func(s *figure.Sheet, y float64) {
+	sec.foot = item{height: 4, wide: true, draw: func(s *figure.Sheet, y float64) {
 		// The last number may stand half beyond the last picture.
 		defer s.Block("axes of small pictures", figure.Box{Left: left - 10, Top: y, Right: right + 3, Bottom: y + 4})()
 		for k := range min(len(g.runs), smallAcross) {
@@ -136,7 +167,7 @@ func (g *smallGroup) section() section {
 	}}
 	for from := 0; from < len(g.runs); from += smallAcross {
 		runs := g.runs[from:min(from+smallAcross, len(g.runs))]
-		sec.rows = append(sec.rows, item{height: smallPitch, runs: len(runs), draw: func(s *figure.Sheet, y float64) {
+		sec.rows = append(sec.rows, item{height: smallPitch, runs: len(runs), wide: true, draw: func(s *figure.Sheet, y float64) {
 			for k, e := range runs {
 				g.draw(s, e, k, y)
 			}
@@ -187,7 +218,7 @@ func (g *smallGroup) drawPicture(a *figure.Axes, e *report.Evaluation) {
 // apart returns the readings used and left out, without those that would lie
 // on the one before.
 func apart(a *figure.Axes, dots []report.Dot) (used, out []figure.Point) {
-	const least = 0.5 // mm
+	const least = 0.6 // mm, the size of a disc
 	last := figure.Point{X: -1e9}
 	for _, d := range dots {
 		p := figure.Point{X: d.VolumeML, Y: d.Value}

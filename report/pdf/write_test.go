@@ -335,10 +335,56 @@ func TestReplacedSigns(t *testing.T) {
 	}
 }
 
-// TestBytesAPage: no more than 12 kB a page and one set of fonts.
+// TestBytesAPage: no more than 12 kB a page with one set of fonts, also of a
+// short night.
 func TestBytesAPage(t *testing.T) {
-	file, res := write(t, seedNight(), Options{})
-	if per := len(file) / res.Pages; per > 12_000 {
-		t.Errorf("%d bytes a page", per)
+	for name, n := range map[string]*report.Night{"40 runs": seedNight(), "demo": demoNight()} {
+		file, res := write(t, n, Options{})
+		if per := len(file) / res.Pages; per > 12_000 {
+			t.Errorf("%s: %d bytes a page", name, per)
+		}
+	}
+}
+
+// TestNothingToDoIsOnePage: a night without anything to do is one page, with
+// the pictures of its runs as long as they fit there.
+func TestNothingToDoIsOnePage(t *testing.T) {
+	for _, o := range []Options{{}, {Letter: true}} {
+		for runs, pages := range map[int]int{0: 1, 9: 1, 60: 4} {
+			n := emptyNight()
+			if runs > 0 {
+				n = soundNight(runs)
+			}
+			d, err := firstVolume(n, o)
+			if err != nil {
+				t.Fatal(err)
+			}
+			if got := len(d.pages); got != pages {
+				t.Errorf("%d sound runs: %d pages, want %d", runs, got, pages)
+			}
+			all := strings.Join(drawnTexts(t, d), " ")
+			if want := "Nothing"; !strings.Contains(all, want) {
+				t.Errorf("%d sound runs: the page does not say %q", runs, want)
+			}
+			if runs > 0 && strings.Count(all, "VIN-") != runs {
+				t.Errorf("%d sound runs: %d have a picture", runs, strings.Count(all, "VIN-"))
+			}
+		}
+	}
+}
+
+// TestManyUnread: a folder of the wrong files does not bury the runs.
+func TestManyUnread(t *testing.T) {
+	n := demoNight()
+	for i := range 200 {
+		n.Unread = append(n.Unread, report.Unread{State: "new", Dump: fmt.Sprintf("wrong/%03d.csv", i), Says: "no schema fits"})
+	}
+	d, err := firstVolume(n, Options{})
+	if err != nil {
+		t.Fatal(err)
+	}
+	all := strings.Join(drawnTexts(t, d), " ")
+	if want := "And 143 more, in the sheet Unread"; !strings.Contains(all, want) || strings.Count(all, "wrong/") != unreadMost-3 {
+		t.Errorf("%d of the wrong files are listed, %q is told: %v", strings.Count(all, "wrong/"), want, strings.Contains(all, want))
 	}
 }

@@ -26,6 +26,7 @@ type plot struct {
 	across, up       figure.Ticks
 	beyond           []report.Dot // readings that the scale leaves out
 	openDot, guessed bool         // what the notes must explain
+	crowded          bool         // endpoints share one place of the rail
 }
 
 // curve draws the run: curve and readings, the rail below, the volume axis.
@@ -282,6 +283,9 @@ func (c *plot) writeNotes() {
 	}
 	if c.openDot {
 		notes = append(notes, string(leftOutSign)+" left out of the fit")
+	}
+	if c.crowded {
+		notes = append(notes, "endpoints too near to each other for this scale share one mark")
 	}
 	for _, d := range c.beyond[:min(len(c.beyond), 3)] {
 		notes = append(notes, "line "+strconv.Itoa(d.Line)+" stands beyond the scale: "+c.p.readingSays(c.e.Signal, d.AsRead))

@@ -117,17 +117,39 @@ func (c *plot) refitLane() (*lane, []label) {
 		if !isNumber(r.VolumeML) || !isNumber(r.Low95ML) || !isNumber(r.High95ML) {
 			continue
 		}
-		at := c.column(r.VolumeML)
-		from, to := min(c.column(r.BracketML[0]), at-1), max(c.column(r.BracketML[1]), at+1)
+		from, to := c.bracketColumns(r)
 		for k := c.column(r.Low95ML); k <= c.column(r.High95ML); k++ {
 			l.put(k, '━', blue)
 		}
 		l.put(from, '[', plain)
 		l.put(to, ']', plain)
-		l.put(at, markOf(r.Kind, true), blue)
 		labels = append(labels, label{min(from, c.column(r.Low95ML)), max(to, c.column(r.High95ML)), c.p.mark.Of(r.Volume()), blue})
 	}
+	c.putMarks(l)
 	return l, labels
+}
+
+// bracketColumns are those of the brackets of an endpoint, on either side of
+// its mark.
+func (c *plot) bracketColumns(r *report.Endpoint) (from, to int) {
+	at := c.column(r.VolumeML)
+	return min(c.column(r.BracketML[0]), at-1), max(c.column(r.BracketML[1]), at+1)
+}
+
+// putMarks sets the marks last, over the brackets of a near neighbour. Of two
+// at one place the notes tell.
+func (c *plot) putMarks(l *lane) {
+	taken := map[int]bool{}
+	for i := range c.e.Endpoints {
+		r := &c.e.Endpoints[i]
+		if !isNumber(r.VolumeML) || !isNumber(r.Low95ML) || !isNumber(r.High95ML) {
+			continue
+		}
+		at := c.column(r.VolumeML)
+		c.crowded = c.crowded || taken[at]
+		taken[at] = true
+		l.put(at, markOf(r.Kind, true), blue)
+	}
 }
 
 func (c *plot) indicatedLane() (*lane, []label) {

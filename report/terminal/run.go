@@ -276,7 +276,14 @@ func (p *page) fitSays(e *report.Evaluation) string {
 	if d.ReadingNoise != nil {
 		said = append(said, "noise of a reading "+p.mark.Short(*d.ReadingNoise, 2)+" "+ingest.Signal(e.Signal).Unit())
 	}
-	if d.ResidualSD != nil {
+	if d.RelativeNoisePercent != nil {
+		said = append(said, "noise of a reading "+p.mark.Short(*d.RelativeNoisePercent, 2)+" %")
+	}
+	switch {
+	case d.ResidualSD == nil:
+	case ingest.Signal(e.Signal) == ingest.Conductivity:
+		said = append(said, "residuals "+p.mark.Short(*d.ResidualSD, 2)+" % of the reading (sd)")
+	default:
 		said = append(said, "residuals "+p.mark.Short(*d.ResidualSD, 2)+" sd (1 is what the noise explains)")
 	}
 	if d.LeftOut > 0 {

@@ -58,7 +58,7 @@ func New(widthMM, heightMM float64, about About) *File {
 	})
 	pdf.SetMargins(0, 0, 0)
 	pdf.SetAutoPageBreak(false, 0)
-	pdf.SetCompression(true)
+	pdf.SetCompression(false) // pack does
 	pdf.SetCatalogSort(true)
 	// gofpdf takes the clock for a date that is zero.
 	date, err := time.Parse(time.DateOnly, about.Date)
@@ -104,8 +104,12 @@ var bookmarkFont = figure.Style{Face: figure.Regular, SizePt: 6.5, Ink: figure.B
 
 // WriteTo writes the whole file.
 func (c *File) WriteTo(w io.Writer) (n int64, err error) {
+	var raw bytes.Buffer
+	if err := c.pdf.Output(&raw); err != nil {
+		return 0, err
+	}
 	count := counter{to: w}
-	err = c.pdf.Output(&count)
+	err = pack(raw.Bytes(), &count)
 	return count.n, err
 }
 
@@ -236,6 +240,10 @@ func (c *File) Fill(pts []figure.Point, ink figure.Ink) {
 func (c *File) Dots(pts []figure.Point, diameterMM float64, ink figure.Ink) {
 	c.pen(ink, diameterMM*ptPerMM, figure.Solid, true)
 	for _, p := range pts {
+		// A tenth of a point is fine enough for discs, and most of a page of
+		// small pictures is their places.
+		p.X, p.Y = math.Round(p.X*ptPerMM*10)/10/ptPerMM, math.Round((c.pageH-p.Y*ptPerMM)*10)/10
+		p.Y = (c.pageH - p.Y) / ptPerMM
 		c.point(p, "m ")
 		c.point(p, "l\n")
 	}
