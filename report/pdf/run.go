@@ -290,13 +290,29 @@ func doubtFigure(e *report.Evaluation, m report.Decimal) bigFigure {
 // leftOut tells how many readings the fit did not use: those that a flag names,
 // or, of a break, how many each arm has.
 func leftOut(e *report.Evaluation) string {
-	if e.Picture != nil && len(e.Picture.Arms) == 2 {
-		return whole(e.Picture.Arms[0].Readings) + " and " + whole(e.Picture.Arms[1].Readings) + " in the arms"
+	if e.Picture != nil && len(e.Picture.Arms) > 0 {
+		return inArms(e.Picture.Arms)
 	}
 	if n := e.Diagnostics.LeftOut; n > 0 {
 		return whole(n) + " left out of the fit"
 	}
 	return "none left out of the fit"
+}
+
+// inArms counts the readings of each arm.
+func inArms(arms []report.Arm) string {
+	said := whole(arms[0].Readings)
+	for i := 1; i < len(arms); i++ {
+		joint := ", "
+		if i+1 == len(arms) {
+			joint = " and "
+		}
+		said += joint + whole(arms[i].Readings)
+	}
+	if len(arms) == 1 {
+		return said + " in the one arm"
+	}
+	return said + " in the arms"
 }
 
 // amount prints a figure or limit of a flag as the flag's sentence does.
