@@ -40,7 +40,8 @@ func (p *program) look(c *cli.Context) error {
 	if err := checkEstimator(estimator); err != nil {
 		return err
 	}
-	if err := checkDecimal(c); err != nil {
+	decimal, err := decimalOf(c)
+	if err != nil {
 		return err
 	}
 	data, err := readDump(path)
@@ -55,7 +56,7 @@ func (p *program) look(c *cli.Context) error {
 	for i := range unread {
 		unread[i].Record, unread[i].State, unread[i].Dump = report.Record, "new", path
 	}
-	return terminal.Look(p.stdout, done, unread, terminal.Options{Colour: p.colours() && !c.Bool("no-colour"), Decimal: decimals[c.String("decimal")]})
+	return terminal.Look(p.stdout, done, unread, terminal.Options{Colour: p.colours() && !c.Bool("no-colour"), Decimal: decimal})
 }
 
 func readDump(path string) ([]byte, error) {

@@ -24,7 +24,7 @@ func (p *program) request(c *cli.Context) (*request, error) {
 		Workers: c.Int("workers"), Laboratory: c.String("laboratory"), Estimator: c.String("estimator"),
 		Lastdrop: version, Limits: refit.Limits(), Refit: evaluator(c.String("estimator")),
 	}
-	r.pages = pdf.Options{Letter: c.String("paper") == "letter", Pages: c.String("pages"), Decimal: decimals[c.String("decimal")]}
+	r.pages = pdf.Options{Letter: c.String("paper") == "letter", Pages: c.String("pages")}
 	if err := r.check(c); err != nil {
 		return r, err
 	}
@@ -55,7 +55,8 @@ func (r *request) check(c *cli.Context) error {
 	if err := oneOf("paper", c.String("paper"), "a4", "letter"); err != nil {
 		return err
 	}
-	if err := checkDecimal(c); err != nil {
+	var err error
+	if r.pages.Decimal, err = decimalOf(c); err != nil {
 		return err
 	}
 	return checkEstimator(r.night.Estimator)

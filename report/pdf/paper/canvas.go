@@ -104,12 +104,8 @@ var bookmarkFont = figure.Style{Face: figure.Regular, SizePt: 6.5, Ink: figure.B
 
 // WriteTo writes the whole file.
 func (c *File) WriteTo(w io.Writer) (n int64, err error) {
-	var raw bytes.Buffer
-	if err := c.pdf.Output(&raw); err != nil {
-		return 0, err
-	}
 	count := counter{to: w}
-	err = pack(raw.Bytes(), &count)
+	err = c.pdf.Output(packer{&count})
 	return count.n, err
 }
 

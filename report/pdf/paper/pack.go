@@ -32,6 +32,17 @@ const (
 // errLayout is returned for a file that is not laid out as gofpdf does.
 var errLayout = errors.New("the PDF file is not laid out as expected")
 
+// packer packs what it is given, a whole file at once: gofpdf writes the
+// buffer that it has.
+type packer struct{ to io.Writer }
+
+func (p packer) Write(raw []byte) (int, error) {
+	if err := pack(raw, p.to); err != nil {
+		return 0, err
+	}
+	return len(raw), nil
+}
+
 // pack compresses the streams of a file that are not, and writes it.
 func pack(raw []byte, to io.Writer) error {
 	offsets, xref, err := references(raw)
