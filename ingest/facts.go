@@ -248,7 +248,9 @@ func (d *draft) otherFacts() {
 			continue
 		}
 		key, _, _ := cells.Clean(s.key)
-		if near := d.nearKey(string(s.key)); near != "" {
+		if near := d.nearKey(string(s.key)); match.Equal(s.key, near) {
+			d.repairs.Add(s.line, cells.Quoted(s.key)+" by itself is no fact, kept as it is")
+		} else if near != "" {
 			d.repairs.Add(s.line, fmt.Sprintf("%s is nearly %q, kept as it is", cells.Quoted(s.key), near))
 		} else if d.schema.Preamble.Lines == schemas.CellLines {
 			d.repairs.Add(s.line, fmt.Sprintf("%s is not in schema %s, kept as it is", cells.Quoted(s.key), d.schema.Name))
