@@ -15,6 +15,10 @@ func structured() map[string][2]string {
 		"blank":   {strings.Replace(single(ph, `facts = [{name="sample", titles="Sample"}]`, "stack = { blank = true }"), `"single"`, `"stacked"`, 1), "Sample;AA\nV;pH\n" + rows + "\nSample;BB\nV;pH\n" + rows + "\n"},
 		"footer":  {single("increment|V|mL\npH|pH", `facts = [{name="sample", titles="Sample"},{name="aliquot_ml", titles="Aliquot", unit="mL"}]`, `footer = { begin = "End", lines = "cells" }`), "Sample;AA\nV;pH\n" + rows + "End;\nAliquot;12,50\n"},
 		"status":  {single("increment|V|mL|empty = \"same\"\npH|pH||empty = \"skip\"\nstatus|S|| values = { ok = \"reading\", no = \"skip\" }\nnumber|No"), "V;pH;S;No\n0,00;3,10;ok;1\n;3,15;no;2\n1,50;;ok;3\n;3,21;ok;4\n0,75;3,52;ok;5\n1,50;5,03;ok;6\n0,75;8,94;ok;7\n0,75;9,45;ok;8\n"},
+		"doses":   {single("status|what|| values = { read = \"reading\", dose = \"dose\", rest = \"skip\" }\nincrement|V|mL|empty = \"same\"\npH|pH||empty = \"skip\"\nnumber|No"), "what;V;pH;No\nread;;3,10;1\ndose;1,50;;2\nread;;3,21;3\nrest;;;4\ndose;0,75;;5\nread;;3,52;6\ndose;1,50;;7\nread;;5,03;8\ndose;0,75;;9\nread;;8,94;10\ndose;0,75;;11\nread;;9,45;12\n"},
+		"columns": {wideSchema("volume|V{n}|mL\npH|pH{n}", `indicated = [{ columns = "found {n}", unit = "mL" }]`), "V1;pH1;found 1;V2;pH2;found 2\n0,00;3,10;2,25;0,00;4,10;3,35\n1,50;3,21;2,25;1,51;4,21;3,35\n2,25;3,52;2,25;2,26;4,52;3,35\n3,75;5,03;2,25;3,76;6,03;3,35\n4,50;8,94;2,25;4,51;9,94;3,35\n"},
+		"start":   {single(ph, `facts = [{name="started", titles="Day", timeTitles="Clock", format="%d-%b-%Y %H:%M"}]`), "Day;03-Jun-2032\nClock;13:47\nV;pH\n" + rows},
+		"pages":   {strings.Replace(single("increment|V mL|mL\npH|pH", "repeatedHeader = true"), "decimalChar", "headerRows = [1, 2]\ndecimalChar", 1), "V;pH\nmL;\n0,00;3,10\n1,50;3,21\n0,75;3,52\nV;pH\nmL;\n1,50;5,03\n0,75;8,94\n0,75;9,45\n"},
 		"grouped": {strings.Replace(single("volume|V|uL|suffixes = \"uL\"\npH|pH"), "decimalChar", "groupChar = \".\"\ndecimalChar", 1), "V;pH\n0 uL;3,10\n1.500 uL;3,21\n2.250 uL;3,52\n3.750 uL;5,03\n4.500 uL;8,94\n5.250 uL;9,45\n"},
 	}
 }

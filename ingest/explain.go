@@ -1,7 +1,6 @@
 package ingest
 
 import (
-	"fmt"
 	"slices"
 
 	"lastdrop/ingest/cells"
@@ -113,7 +112,7 @@ func (c *columns) explained() []Column {
 			one.Role, one.Unit, one.Becomes = string(f.Role), f.Unit.Code, becomes(f)
 		}
 		if j := slices.IndexFunc(c.facts, func(f factColumn) bool { return f.index == i }); j >= 0 {
-			one.Role = fmt.Sprintf("fact %s", c.facts[j].fact.Name)
+			one.Role = c.facts[j].What
 		}
 		list = append(list, one)
 	}

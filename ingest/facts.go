@@ -94,11 +94,7 @@ func (d *draft) find(field string, titles, columns []string) *statement {
 func (d *draft) applyFact(rule *schemas.Fact, s *statement) {
 	switch rule.Name {
 	case schemas.FactStarted:
-		date, err := cells.ParseDate(string(s.value), rule.Format, rule.Zone)
-		if err != nil {
-			d.repairs.Add(s.line, fmt.Sprintf("started: %s %v; the fact is not used", cells.Quoted(s.value), err))
-		}
-		d.run.Facts.Started = date
+		d.applyStart(rule, s)
 	case schemas.FactReadings:
 		d.checkCount(s)
 	case schemas.FactRun: // has joined the footer row to its run
@@ -113,6 +109,25 @@ func (d *draft) applyFact(rule *schemas.Fact, s *statement) {
 	default:
 		*d.textSlot(rule.Name) = d.factText(rule, s)
 	}
+}
+
+// applyStart reads when the run was started; the time of day may stand by
+// itself.
+func (d *draft) applyStart(rule *schemas.Fact, s *statement) {
+	text := s.value
+	if rule.Times != nil {
+		of := d.find("started", rule.Times, nil)
+		if of == nil {
+			d.repairs.Add(s.line, fmt.Sprintf("started: no time of day beside %s; the fact is not used", cells.Quoted(s.value)))
+			return
+		}
+		text = slices.Concat(s.value, []byte{' '}, of.value)
+	}
+	date, err := cells.ParseDate(string(text), rule.Format, rule.Zone)
+	if err != nil {
+		d.repairs.Add(s.line, fmt.Sprintf("started: %s %v; the fact is not used", cells.Quoted(text), err))
+	}
+	d.run.Facts.Started = date
 }
 
 // applyNumber reads a number that enters arithmetic.
@@ -233,7 +248,9 @@ func (d *draft) otherFacts() {
 			continue
 		}
 		key, _, _ := cells.Clean(s.key)
-		if near := d.nearKey(string(s.key)); near != "" {
+		if near := d.nearKey(string(s.key)); match.Equal(s.key, near) {
+			d.repairs.Add(s.line, cells.Quoted(s.key)+" by itself is no fact, kept as it is")
+		} else if near != "" {
 			d.repairs.Add(s.line, fmt.Sprintf("%s is nearly %q, kept as it is", cells.Quoted(s.key), near))
 		} else if d.schema.Preamble.Lines == schemas.CellLines {
 			d.repairs.Add(s.line, fmt.Sprintf("%s is not in schema %s, kept as it is", cells.Quoted(s.key), d.schema.Name))

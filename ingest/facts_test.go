@@ -136,7 +136,7 @@ func TestMissingMarksAndSiemens(t *testing.T) {
 		t.Errorf("%s %v step %v, want conductivity 4.2596 step 0.0001", run.Signal, run.Readings[0].Value, run.ReadingStep)
 	}
 	_, _, problems := Read([]byte("units\nV;E\n0;0\n0;-999\n"), "x.csv", set)
-	if want := `x.csv:4:3: potential: the cell is empty; the dump is damaged or the reading failed; export it again`; len(problems) != 1 || problems[0].Error() != want {
+	if want := `x.csv:4:3: potential: "-999" means that nothing is given; the dump is damaged or the reading failed; export it again`; len(problems) != 1 || problems[0].Error() != want {
 		t.Errorf("\ngot  %v\nwant %s", problems, want)
 	}
 }

@@ -33,22 +33,24 @@ type columns struct {
 	signal   Signal
 	width    int
 	line     int
-	text     []byte // the first row as it stands, to know it again
+	text     []byte // all its rows as they stand, to know them again
 	rows     int
-	plain    bool // every row is a reading, and its volume and reading stand in it
+
+	dosesTold bool // a status tells which rows must have an increment
+	plain     bool // every row is a reading, and its volume and reading stand in it
 }
 
 // factColumn is a column that states a fact of the run in every row.
 type factColumn struct {
 	index int
-	fact  *schemas.Fact
+	match.Stated
 }
 
-func newColumns(titles [][]byte, row *cells.Row, body []byte, rows int) *columns {
+func newColumns(titles [][]byte, row *cells.Row, rows int) *columns {
 	n := len(titles)
 	return &columns{volume: -1, reading: -1, number: -1, run: -1, status: -1, remark: -1, optional: [optionalColumns]int{-1, -1, -1},
 		titles: titles, fields: make([]*schemas.Field, n), limits: make([]*plausible.Limit, n),
-		width: n, line: row.Line, text: body[row.From:row.To], rows: rows}
+		width: n, line: row.Line, rows: rows}
 }
 
 // signals by role of the reading.
@@ -78,7 +80,7 @@ func (d *draft) bindTitles() *columns {
 		d.repairs.Add(d.row.Line, trailingDropped)
 	}
 	titles, rows := match.Titles(d.schema, &d.scan, &d.row)
-	d.columns = newColumns(titles, &d.row, d.text.Body, rows)
+	d.columns = newColumns(titles, &d.row, rows)
 	d.lastLine = d.row.Line
 	d.blanks = d.blanks[:0]
 	return d.columns
@@ -86,9 +88,11 @@ func (d *draft) bindTitles() *columns {
 
 // passHeader passes the rows of the header after the first.
 func (d *draft) passHeader() {
+	from := d.row.From
 	for n := 1; n < d.columns.rows && d.scan.Next(&d.row); n++ {
 		d.lastLine = d.row.Line
 	}
+	d.columns.text = d.text.Body[from:d.row.To]
 	d.columns.bound()
 }
 
@@ -97,6 +101,7 @@ func (c *columns) bound() {
 	special := func(i int) bool {
 		return i >= 0 && c.fields[i] != nil && (c.fields[i].Empty != schemas.EmptyRefused || c.fields[i].Refills || c.fields[i].Role == schemas.RoleIncrement)
 	}
+	c.dosesTold = c.status >= 0 && slices.ContainsFunc(c.fields[c.status].Values, func(v schemas.Value) bool { return v.Means == schemas.StatusDose })
 	c.plain = c.facts == nil && c.remark < 0 && c.status < 0 && !special(c.volume) && !special(c.reading)
 }
 
@@ -104,8 +109,8 @@ func (c *columns) bound() {
 func (d *draft) bindColumn(c *columns, i int, text []byte) {
 	f := match.FieldOf(d.schema, text)
 	if f == nil {
-		if fact := match.FactOf(d.schema, text); fact != nil {
-			c.facts = append(c.facts, factColumn{i, fact})
+		if stated := match.StatedBy(d.schema, text); stated.Title != "" {
+			c.facts = append(c.facts, factColumn{i, stated})
 			return
 		}
 		d.repairs.Add(d.row.Line, fmt.Sprintf("column %s not used", cells.Quoted(text)))
@@ -188,9 +193,14 @@ func (d *draft) needColumns(c *columns) {
 }
 
 // headerAgain passes a header that stands again inside the table, where the
-// schema permits that. It must be the same to the byte.
+// schema permits that. All its rows must be the same to the byte: passing over
+// a row that stands where the second should would lose a reading.
 func (d *draft) headerAgain() bool {
-	if !d.schema.RepeatedHeader || !bytes.Equal(d.text.Body[d.row.From:d.row.To], d.columns.text) {
+	rest := d.text.Body[d.row.From:]
+	if !d.schema.RepeatedHeader || !bytes.HasPrefix(rest, d.columns.text) {
+		return false
+	}
+	if after := rest[len(d.columns.text):]; len(after) > 0 && after[0] != '\n' && after[0] != '\r' {
 		return false
 	}
 	d.repairs.Add(d.row.Line, "the header again, passed over")
@@ -214,6 +224,6 @@ func (d *draft) columnFacts() {
 			continue
 		}
 		d.factSeen[i] = slices.Clip(value)
-		d.addStatement(statement{key: d.columns.titles[f.index], value: value, line: d.row.Line, start: d.row.From, at: c.From})
+		d.addStatement(statement{key: []byte(f.Title), value: value, line: d.row.Line, start: d.row.From, at: c.From})
 	}
 }

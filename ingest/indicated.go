@@ -16,21 +16,28 @@ func (d *draft) applyIndicated() {
 	for i := range d.schema.Indicated {
 		rule := &d.schema.Indicated[i]
 		kind := d.find("indicated kind", rule.KindTitles, nil)
-		s := d.find("indicated", rule.Titles, nil)
+		s := d.find("indicated", rule.Titles, rule.Columns)
 		if s == nil {
 			if i == 0 && kind != nil {
 				d.repairs.Add(kind.line, "the kind of an indicated endpoint that is not stated")
 			}
 			continue
 		}
-		n, v, why, hint := d.quantity(s.value, s.line, &rule.Written, plausible.Of("volume"))
+		n, v, why, hint := d.quantity(s.value, s.line, &rule.Written, plausible.Of(string(rule.Unit.Quantity)))
+		if rule.Unit.Quantity == schemas.Mass && d.densityGML == nil && why == "" {
+			why, hint = "a mass of titrant whose density is not known", fmt.Sprintf("state it in the dump, or as a default in schema %s", d.schema.Name)
+		}
 		if why != "" {
 			d.refuse(s.line, s.start, s.at, "indicated", why, hint)
 			continue
 		}
 		var shown steps
 		shown.see(n, rule.Unit)
-		d.run.Indicated = append(d.run.Indicated, Indicated{Kind: d.kind(rule, kind), VolumeML: v, StepML: shown.step(), Line: s.line})
+		step := shown.step()
+		if rule.Unit.Quantity == schemas.Mass {
+			v, step = v / *d.densityGML, step / *d.densityGML
+		}
+		d.run.Indicated = append(d.run.Indicated, Indicated{Kind: d.kind(rule, kind), VolumeML: v, StepML: step, Line: s.line})
 	}
 }
 

@@ -87,6 +87,8 @@ func (l *longTable) tableRow() {
 			l.blanks = append(l.blanks, row.Line)
 		}
 		return
+	case l.last != nil && l.last.headerAgain(), l.last == nil && l.head.headerAgain():
+		return
 	}
 	name := []byte{}
 	if i < len(row.Cells) {

@@ -98,7 +98,8 @@ func TestIncrementsAreSummed(t *testing.T) {
 func TestRowsBetweenDoses(t *testing.T) {
 	schema := single("time|t|s\nincrement|dose|mL|empty = \"same\"\npotential|E|mV|empty = \"skip\"", `sameVolume = "last"`)
 	run := got{schema: schema, dump: "t;dose;E\n0;;10\n5;1,0;11\n9;;12\n12;;\n15;0,5;\n20;;13\n25;0,5;14\n26;0,25;15\n31;0,25;16\n",
-		points: "0:10 1:12 1.5:13 2:14 2.25:15 2.5:16"}.check(t)
+		points:  "0:10 1:12 1.5:13 2:14 2.25:15 2.5:16",
+		repairs: []string{"line 2: 4 rows from here on without an increment, taken as no titrant", "line 5: 2 rows from here on without a reading, passed over"}}.check(t)
 	if want := []float64{0, 9, 20, 25, 26, 31}; !slices.Equal(run.TimesS, want) {
 		t.Errorf("times %v, want %v", run.TimesS, want)
 	}

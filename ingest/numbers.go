@@ -31,14 +31,19 @@ func (d *draft) needed(i int, s *steps) (v float64, ok bool) {
 }
 
 // delivered reads the volume of a row in which it is to be worked out: from
-// increments, from empty cells, from a burette that was filled again.
+// increments, from empty cells, from a burette that was filled again. A text
+// that means "not given" is no empty cell: a volume that failed is not "no
+// titrant".
 func (d *draft) delivered() (v float64, ok bool) {
 	i := d.columns.volume
 	at, f := d.row.Cells[i], d.columns.fields[i]
-	if f.Empty == schemas.EmptySame && d.missing(d.scan.Bytes(at)) {
+	if f.Empty == schemas.EmptySame && len(d.scan.Bytes(at)) == 0 {
 		if !d.delivering && f.Role == schemas.RoleVolume {
 			d.refuseRow(at.From, string(f.Role), "the cell is empty and no volume stands above", "the dump is damaged; export it again")
 			return 0, false
+		}
+		if f.Role == schemas.RoleIncrement && !d.columns.dosesTold {
+			d.undosed.see(d.row.Line)
 		}
 		return d.volume, true
 	}
@@ -75,11 +80,25 @@ func (d *draft) rounded(v float64) float64 {
 	return v
 }
 
-// skips reads the status of the row and reports whether it is no reading.
-func (d *draft) skips() bool {
+// deliveredOnly takes the titrant of a row that is no reading. Where volumes
+// stand for themselves in every row, those of such rows do not count.
+func (d *draft) deliveredOnly(means string) {
+	i := d.columns.volume
+	f, empty := d.columns.fields[i], len(d.scan.Bytes(d.row.Cells[i])) == 0
+	switch {
+	case empty && means == schemas.StatusDose:
+		d.refuseRow(d.row.Cells[i].From, string(f.Role), "the cell is empty in a row that delivers titrant", "the dump is damaged; export it again")
+	case empty && (means == schemas.StatusSkip || f.Role == schemas.RoleVolume):
+	case f.Role == schemas.RoleIncrement, f.Empty == schemas.EmptySame, f.Refills, means == schemas.StatusDose:
+		d.delivered()
+	}
+}
+
+// status says what the row is, by the column that tells it.
+func (d *draft) status() string {
 	i := d.columns.status
 	if i < 0 {
-		return false
+		return schemas.StatusReading
 	}
 	at := d.row.Cells[i]
 	b := d.scan.Bytes(at)
@@ -88,15 +107,29 @@ func (d *draft) skips() bool {
 			continue
 		}
 		if v.Means == schemas.StatusTimedOut {
-			if d.timedOut == 0 {
-				d.timedOutLine = d.row.Line
-			}
-			d.timedOut++
+			d.timedOut.see(d.row.Line)
 		}
-		return v.Means == schemas.StatusSkip
+		return v.Means
 	}
 	d.refuseRow(at.From, string(schemas.RoleStatus), cells.Quoted(b)+" is not known", fmt.Sprintf("state in values of schema %s what it means", d.schema.Name))
-	return true
+	return schemas.StatusSkip
+}
+
+// tally counts rows that are told in one repair line.
+type tally struct{ rows, line int }
+
+func (t *tally) see(line int) {
+	if t.rows == 0 {
+		t.line = line
+	}
+	t.rows++
+}
+
+// told tells the rows, counted, from the first of them on.
+func (t *tally) told(d *draft, what, about string) {
+	if t.rows > 0 {
+		d.repairs.Add(t.line, fmt.Sprintf("%s from here on %s", plural(t.rows, what), about))
+	}
 }
 
 // maxRemarks is how many remarks of one run are kept.
@@ -152,7 +185,7 @@ const daySeconds = 24 * 3600
 // midnight.
 func (d *draft) clock(b []byte, f *schemas.Field) (v float64, why string) {
 	if d.missing(b) {
-		return 0, "the cell is empty"
+		return 0, notGiven(b)
 	}
 	v, err := cells.ParseClock(string(b), f.Clock)
 	switch {
@@ -176,7 +209,7 @@ func (d *draft) clock(b []byte, f *schemas.Field) (v float64, why string) {
 // when it can be used.
 func (d *draft) quantity(b []byte, line int, w *schemas.Written, l *plausible.Limit) (n cells.Number, v float64, why, hint string) {
 	if d.missing(b) {
-		return n, 0, "the cell is empty", "the dump is damaged or the reading failed; export it again"
+		return n, 0, notGiven(b), "the dump is damaged or the reading failed; export it again"
 	}
 	n, bound, fault := cells.ParseWritten(b, &d.schema.Dialect, w)
 	if fault != cells.NumberOK {
@@ -195,6 +228,14 @@ func (d *draft) quantity(b []byte, line int, w *schemas.Written, l *plausible.Li
 		return n, 0, why, l.Hint
 	}
 	return n, v, "", ""
+}
+
+// notGiven says what stands in a cell whose text means "not given".
+func notGiven(b []byte) string {
+	if len(b) == 0 {
+		return "the cell is empty"
+	}
+	return cells.Quoted(b) + " means that nothing is given"
 }
 
 // missing reports whether a text means "not given".

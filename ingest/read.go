@@ -149,8 +149,9 @@ type draft struct {
 	shown        float64  // last volume of such a table as the dump has it
 	filled       float64  // volume delivered before the burette was filled last
 	delivering   bool     // such a volume has been read
-	timedOut     int      // readings that had not come to rest
-	timedOutLine int      // of the first of them
+	timedOut     tally    // readings that had not come to rest
+	passed       tally    // rows without a reading
+	undosed      tally    // rows without an increment, where no status tells that none belongs there
 	volumeSteps  steps
 	readingSteps steps
 	lost         [optionalColumns]bool // the column is not used
@@ -243,9 +244,9 @@ func (d *draft) convert() {
 		}
 		run.ReadingStep *= *d.cellPerCM
 	}
-	if d.timedOut > 0 {
-		d.repairs.Add(d.timedOutLine, fmt.Sprintf("%s from here on had not come to rest, used as they are", plural(d.timedOut, "reading")))
-	}
+	d.timedOut.told(d, "reading", "had not come to rest, used as they are")
+	d.passed.told(d, "row", "without a reading, passed over")
+	d.undosed.told(d, "row", "without an increment, taken as no titrant")
 }
 
 // judge holds the whole curve against the rules of plausibility.

@@ -147,6 +147,7 @@ func (d *draft) eachKey(f func(title string)) {
 	}
 	for i := range d.schema.Facts {
 		each(d.schema.Facts[i].Titles)
+		each(d.schema.Facts[i].Times)
 	}
 	for i := range d.schema.Results {
 		each(d.schema.Results[i].Titles)

@@ -108,16 +108,17 @@ func (d *draft) special() {
 	c := d.columns
 	d.columnFacts()
 	d.remarked()
-	skip := d.skips()
-	reading := d.scan.Bytes(d.row.Cells[c.reading])
-	skip = skip || c.fields[c.reading].Empty == schemas.EmptySkip && d.missing(reading)
-	if skip && (c.fields[c.volume].Role != schemas.RoleIncrement || d.missing(d.scan.Bytes(d.row.Cells[c.volume]))) {
+	means := d.status()
+	skip := means == schemas.StatusSkip || means == schemas.StatusDose
+	if !skip && c.fields[c.reading].Empty == schemas.EmptySkip && d.missing(d.scan.Bytes(d.row.Cells[c.reading])) {
+		d.passed.see(d.row.Line)
+		skip = true
+	}
+	if skip {
+		d.deliveredOnly(means)
 		return
 	}
 	volume, ok := d.delivered()
-	if skip {
-		return
-	}
 	value, ok2 := d.needed(c.reading, &d.readingSteps)
 	if ok && ok2 && d.fault == nil {
 		d.keep(volume, value)

@@ -12,17 +12,19 @@ import (
 // has columns of its own, and perhaps shares some with the others.
 type wideTable struct {
 	*reader
-	head  *draft // preamble, header and rows, shared by all runs; no run itself
-	runs  []*wideRun
-	names []nameRow
+	head     *draft // preamble, header and rows, shared by all runs; no run itself
+	runs     []*wideRun
+	names    []nameRow
+	untitled []int // columns without a title, whose cells must be empty
 }
 
 // wideRun is one run of the layout wide.
 type wideRun struct {
 	*draft
-	from, to int   // its columns, the last one excluded
-	own      []int // those that it shares with nobody
-	ended    int   // line in which its columns are empty first; 0 while they are not
+	from, to int    // its columns, the last one excluded
+	own      []int  // those that it shares with nobody
+	counted  string // the number for {n} in their titles; "" when they have none
+	ended    int    // line in which its columns are empty first; 0 while they are not
 }
 
 // nameRow is a row above the header that has a cell for each run.
@@ -100,81 +102,6 @@ func (d *draft) namesRuns() bool {
 	return true
 }
 
-// bind binds the header and parts its columns into runs: a new one begins
-// where a role comes again.
-func (w *wideTable) bind() {
-	head := w.head
-	c := head.bindTitles()
-	shared := map[int]*schemas.Field{}
-	for i, text := range c.titles {
-		f := match.FieldOf(w.schema, text)
-		if f != nil && f.Shared {
-			shared[i] = f
-			continue
-		}
-		if f == nil && len(text) > 0 {
-			head.repairs.Add(w.row.Line, fmt.Sprintf("column %s not used", cells.Quoted(text)))
-		}
-		if f != nil && f.Role != schemas.RoleUnused {
-			w.bindColumn(i, f)
-		}
-	}
-	w.share(shared)
-	if len(w.runs) > maxWideRuns {
-		head.refuseRow(w.row.From, "", fmt.Sprintf("%d runs in one table", len(w.runs)), fmt.Sprintf("at most %d are read", maxWideRuns))
-	}
-	if len(w.runs) == 0 {
-		head.needColumns(c)
-	}
-	w.named()
-	head.passHeader()
-}
-
-// bindColumn gives a column to the run at hand or to the next one.
-func (w *wideTable) bindColumn(i int, f *schemas.Field) {
-	var run *wideRun
-	if n := len(w.runs); n > 0 && *w.runs[n-1].columns.slot(f.Role) < 0 {
-		run = w.runs[n-1]
-	} else {
-		run = &wideRun{draft: w.begin(w.row.Line), from: i}
-		head := w.head.columns
-		run.columns = newColumns(head.titles, &w.row, w.text.Body, head.rows)
-		run.table = &table{}
-		run.lastLine = w.row.Line
-		w.runs = append(w.runs, run)
-	}
-	*run.columns.slot(f.Role) = i
-	run.columns.take(i, f)
-	run.own = append(run.own, i)
-	run.to = i + 1
-}
-
-// share gives the shared columns to every run, and finds out what each lacks.
-func (w *wideTable) share(shared map[int]*schemas.Field) {
-	for n, run := range w.runs {
-		for i := range run.columns.titles { // in the order of the dump
-			f := shared[i]
-			if f == nil || f.Role == schemas.RoleUnused {
-				continue
-			}
-			if slot := run.columns.slot(f.Role); *slot < 0 {
-				*slot = i
-				run.columns.take(i, f)
-			}
-		}
-		if n+1 < len(w.runs) {
-			run.to = w.runs[n+1].from
-		} else {
-			run.to = len(run.columns.titles)
-		}
-		run.columns.bound()
-		run.needColumns(run.columns)
-		if run.fault == nil && len(w.runs) <= maxWideRuns {
-			run.table.readings = make([]Reading, 0, min(w.linesFrom(w.row.To), 1000))
-		}
-	}
-}
-
 // named takes the cells of the rows above the header into their runs. A row
 // that is not as wide as the header would give its names to other runs.
 func (w *wideTable) named() {
@@ -190,6 +117,10 @@ func (w *wideTable) named() {
 		}
 		if n := len(row.Cells); n != width {
 			w.head.refuse(row.Line, row.From, row.To, "", fmt.Sprintf("%s above a header of %d", plural(n, "cell"), width), "the line is damaged; export the dump again")
+			return
+		}
+		if label := row.Cells[0]; len(w.runs) > 0 && w.runs[0].from > 0 && !label.Empty() && !match.Equal(w.scan.Bytes(label), w.names[i].title) {
+			w.head.refuse(row.Line, row.From, label.From, "", fmt.Sprintf("%s where the row %q is expected", cells.Quoted(w.scan.Bytes(label)), w.names[i].title), "a line is missing, doubled or damaged; export the dump again, or correct wide.titles")
 			return
 		}
 		for _, run := range w.runs {
@@ -240,6 +171,12 @@ func (w *wideTable) tableRow() {
 		w.damaged(head.fault)
 		head.fault = nil
 		return
+	}
+	for _, i := range w.untitled {
+		if c := row.Cells[i]; !c.Empty() {
+			head.refuseRow(c.From, "", fmt.Sprintf("%s in column %d, which has no title", cells.Quoted(w.scan.Bytes(c)), i+1), "the header is damaged, or the row; export the dump again")
+			return
+		}
 	}
 	for _, run := range w.runs {
 		run.wideRow()

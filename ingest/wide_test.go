@@ -13,7 +13,7 @@ func wideSchema(fields string, more ...string) string {
 }
 
 const (
-	wideFields = "volume|V|mL\npH|pH\ntemperature|T|Cel"
+	wideFields = "volume|V|mL\npH|pH\ntemperature|T|Cel\nunused|x"
 	wideNames  = "wide.titles = [\"Sample\", \"Start\"]\nfacts = [{name=\"sample\", titles=\"Sample\"}, {name=\"operator\", titles=\"By\"}, {name=\"started\", titles=\"Start\"}]"
 )
 
@@ -49,10 +49,13 @@ func TestWideRuns(t *testing.T) {
 		{"cut off", head + rows + "5;3,5;22;5", a + dropped + "|line 10: last row without line end dropped\n" + b + dropped + "|line 10: last row without line end dropped"},
 		{"a cell lost above", strings.Replace(head, "A;;;B;", "A;;B;", 1) + rows, "x.csv:2:6: 4 cells above a header of 5; the line is damaged; export the dump again"},
 		{"a quote above", strings.Replace(head, "A;;;B;", "A;;;\"B;", 1) + rows, "x.csv:2:5: a quote that is not closed on its line; the line is damaged; export the dump again"},
-		{"blank line and unknown column", "By;Analyst 1;;;;\nA;;;B;;\n2031-04-02T08:14;;;2031-04-02T09:00;;\nV;pH;T;V;pH;x\n" + strings.ReplaceAll(strings.Replace(rows, "1;3,1", "\n1;3,1", 1), ";5\n", ";5;1\n"),
-			a + dropped + "|line 4: column \"x\" not used|line 6: blank line in the table skipped\n" + b + dropped + "|line 4: column \"x\" not used|line 6: blank line in the table skipped"},
+		{"blank line and a column of no use", "By;Analyst 1;;;;\nA;;;B;;\n2031-04-02T08:14;;;2031-04-02T09:00;;\nV;pH;T;V;pH;x\n" + strings.ReplaceAll(strings.Replace(rows, "1;3,1", "\n1;3,1", 1), ";5\n", ";5;1\n"),
+			a + dropped + "|line 6: blank line in the table skipped\n" + b + dropped + "|line 6: blank line in the table skipped"},
+		{"unknown column", strings.Replace(head, "V;pH\n", "V;pH?\n", 1) + rows, `x.csv:4:10: column "pH?" is not in schema made; a column without meaning could be a damaged title of one with; export the dump again, or state it in fields, as "unused" if it is of no use`},
 		{"no header", "By;Analyst 1\n" + rows, `x.csv:1:1: schema: no schema fits; it begins with "By;Analyst 1" (tried made); export it as a schema expects, or write a schema for it`},
-		{"a run without a reading", strings.Replace(head, "V;pH\n", "V;E\n", 1) + rows, a + dropped + "|line 4: column \"E\" not used\n" + `x.csv:4:1: run 2: reading: no such column in the header (has "V", "pH", "T", "V", "E"); schema made needs a header with "V" and "pH"`},
+		{"a run without a reading", strings.Replace(head, "V;pH\n", "V;x\n", 1) + rows, `x.csv:4:8: reading: the columns of run 2, from "V" on: no such column in the header (has "V", "pH", "T", "V", "x"); schema made needs a header with "V" and "pH"`},
+		{"no title above a column", strings.Replace(head, "V;pH;T", ";pH;T", 1) + rows, `x.csv:4:9: volume: the columns of run 2, from "pH" on: no such column in the header (has "", "pH", "T", "V", "pH"); schema made needs a header with "V" and "pH"`},
+		{"no title above a column that the run can lack", strings.Replace(head, "V;pH;T", "V;pH;", 1) + rows, `x.csv:5:5: "22" in column 3, which has no title; the header is damaged, or the row; export the dump again`},
 	} {
 		t.Run(c.name, func(t *testing.T) {
 			if got := wideListing(c.dump, wideSchema(wideFields, wideNames), t); got != c.want {

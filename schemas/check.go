@@ -55,6 +55,9 @@ func (s *Schema) checkGroup(n *node) {
 		key  string
 		char byte
 	}{{"decimalChar", d.DecimalChar}, {"delimiter", d.Delimiter}, {"quoteChar", d.QuoteChar}, {"commentChar", d.CommentChar}} {
+		if other.key == "delimiter" && d.QuoteChar != 0 {
+			continue // a number with groups stands in quotes then
+		}
 		if d.GroupChar == string(rune(other.char)) {
 			n.problem("groupChar", fmt.Sprintf("%q is the %s too", d.GroupChar, other.key), "state two different characters")
 		}
@@ -173,6 +176,13 @@ func (s *Schema) checkWide(root *node) {
 			}
 		}
 	}
+	for i, f := range s.Facts {
+		for _, t := range f.Columns {
+			if strings.Contains(t, Numbered) {
+				(&node{src: root.src, path: item("facts", i)}).problem("columns", fmt.Sprintf("%q in the layout %q", t, s.Layout), `only in the layout "wide" the columns of runs are numbered`)
+			}
+		}
+	}
 }
 
 func (s *Schema) footerNamesRun() bool {
@@ -230,6 +240,7 @@ func (s *Schema) checkTitles(root *node) {
 	seen := map[FactName]bool{}
 	for i, f := range s.Facts {
 		keys.claim(join(item("facts", i), "titles"), f.Titles)
+		keys.claim(join(item("facts", i), "timeTitles"), f.Times)
 		columns.claim(join(item("facts", i), "columns"), f.Columns)
 		if seen[f.Name] {
 			(&node{src: root.src, path: item("facts", i)}).problem("name", fmt.Sprintf("a second %q", f.Name), "put all keys of one fact into its titles")
@@ -238,6 +249,7 @@ func (s *Schema) checkTitles(root *node) {
 	}
 	for i, in := range s.Indicated {
 		keys.claim(join(item("indicated", i), "titles"), in.Titles)
+		columns.claim(join(item("indicated", i), "columns"), in.Columns)
 	}
 	for i, r := range s.Results {
 		keys.claim(join(item("results", i), "titles"), r.Titles)
@@ -289,6 +301,7 @@ func (s *Schema) checkReach(root *node) {
 	}
 	for i, f := range s.Facts {
 		try(join(item("facts", i), "titles"), f.Titles)
+		try(join(item("facts", i), "timeTitles"), f.Times)
 	}
 	for i, in := range s.Indicated {
 		try(join(item("indicated", i), "titles"), in.Titles)

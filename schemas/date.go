@@ -14,10 +14,10 @@ type Pattern struct{ text string }
 // Text is the pattern as the schema states it, "" for ISO 8601.
 func (p Pattern) Text() string { return p.text }
 
-// directives are those that a pattern may have. %y is a year of this
-// century; names of weekdays and months are left out, because they depend on
-// a language.
-const directives = "YymdHIpMSfz"
+// directives are those that a pattern may have. %y is a year of this century,
+// %b the month by the first three letters of its English name; names of
+// weekdays are left out, because they say nothing that the day does not.
+const directives = "YymbdHIpMSfz"
 
 // ParsePattern checks a pattern. The order of day and month is always stated:
 // a pattern without year, month, day, hour and minute is refused.
@@ -26,7 +26,7 @@ func ParsePattern(s string) (Pattern, error) {
 	if err != nil {
 		return Pattern{}, err
 	}
-	for _, need := range []string{"Yy", "m", "d", "HI", "M"} {
+	for _, need := range []string{"Yy", "mb", "d", "HI", "M"} {
 		switch n := count(seen, need); {
 		case n == 0:
 			return Pattern{}, fmt.Errorf("%q lacks %%%s", s, strings.Join(strings.Split(need, ""), " or %"))
@@ -83,7 +83,7 @@ func ParseClock(s string) (Pattern, error) {
 	if count(seen, "M") == 0 || count(seen, "S")+count(seen, "HI") == 0 {
 		return Pattern{}, fmt.Errorf("%q lacks %%M with %%H, %%I or %%S", s)
 	}
-	if date := count(seen, "Yy") + count(seen, "m") + count(seen, "d"); date != 0 && (date != 3 || count(seen, "HI") == 0) || count(seen, "HI") > 1 || count(seen, "z") > 0 {
+	if date := count(seen, "Yy") + count(seen, "mb") + count(seen, "d"); date != 0 && (date != 3 || count(seen, "HI") == 0) || count(seen, "HI") > 1 || count(seen, "z") > 0 {
 		return Pattern{}, fmt.Errorf("%q is neither a time nor a date and time", s)
 	}
 	if count(seen, "I") != count(seen, "p") {

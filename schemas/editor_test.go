@@ -57,7 +57,7 @@ func keyForms() map[string]object {
 			"sameVolume": oneOf("all", string(SameLast)), "repeatedHeader": flagged, "keepUnterminatedRow": flagged},
 		"dialect": {"encoding": oneOf(string(UTF8), string(UTF16), string(UTF16LE), string(UTF16BE), string(Windows1252), string(Latin1), string(Auto)),
 			"delimiter": object{"type": "string", "minLength": 1, "maxLength": 1}, "quoteChar": oneChar, "escapeChar": oneChar, "commentChar": oneChar, "decimalChar": oneOf(".", ","), "groupChar": oneChar,
-			"headerRows": object{"type": "array", "items": object{"type": "integer", "minimum": 1, "maximum": maxHeaderRows}}, "headerJoin": text, "missingValues": anyTexts},
+			"headerRows": object{"type": "array", "items": object{"type": "integer", "minimum": 1, "maximum": maxHeaderRows}}, "headerJoin": text, "delimiterRepeated": flagged, "missingValues": anyTexts},
 		"recognise": {"firstLine": text, "firstLineBegins": text, "lines": texts, "absent": texts, "header": flagged},
 		"preamble":  {"lines": lines, "separator": oneChar},
 		"stack":     {"begin": text, "end": text, "blank": flagged},
@@ -67,15 +67,15 @@ func keyForms() map[string]object {
 		"fields": {"name": oneOf(roles...), "titles": texts, "unit": oneOf(unitCodes...), "suffixes": texts, "bounds": flagged, "empty": oneOf(string(EmptySame), string(EmptySkip)),
 			"refills": flagged, "format": text, "shared": flagged, "values": object{"type": "object", "additionalProperties": oneOf(statusWords()...)}},
 		"facts": {"name": oneOf(names...), "titles": texts, "columns": texts, "file": text, "folder": text, "default": object{"anyOf": []any{text, object{"type": "number"}}},
-			"unit": oneOf(unitCodes...), "suffixes": texts, "bounds": flagged, "format": text, "zone": text, "values": means},
-		"indicated": {"titles": texts, "unit": oneOf(codes(Volume)...), "suffixes": texts, "bounds": flagged, "kind": oneOf(Kinds()...), "kindTitles": texts,
+			"unit": oneOf(unitCodes...), "suffixes": texts, "bounds": flagged, "format": text, "timeTitles": texts, "zone": text, "values": means},
+		"indicated": {"titles": texts, "columns": texts, "unit": oneOf(append(codes(Volume), codes(Mass)...)...), "suffixes": texts, "bounds": flagged, "kind": oneOf(Kinds()...), "kindTitles": texts,
 			"kindValues": object{"type": "object", "additionalProperties": oneOf(Kinds()...)}},
 		"results": {"titles": texts, "unit": object{"type": "string", "minLength": 1}, "suffixes": texts, "bounds": flagged},
 	}
 }
 
 // needs are the keys that a table must have.
-var needs = map[string][]string{"": {"name", "layout", "recognise", "fields"}, "fields": {"name", "titles"}, "facts": {"name"}, "indicated": {"titles", "unit"}, "results": {"titles", "unit"}}
+var needs = map[string][]string{"": {"name", "layout", "recognise", "fields"}, "fields": {"name", "titles"}, "facts": {"name"}, "indicated": {"unit"}, "results": {"titles", "unit"}}
 
 // editorSchema is schema.json as the tables of the parser have it.
 func editorSchema() object {

@@ -28,7 +28,9 @@ func readField(n *node) Field {
 	return f
 }
 
-func statusWords() []string { return []string{StatusReading, StatusTimedOut, StatusSkip} }
+func statusWords() []string {
+	return []string{StatusReading, StatusTimedOut, StatusDose, StatusSkip}
+}
 
 // fieldNumber reads the keys about the numbers of a column.
 func (n *node) fieldNumber(f *Field) {
@@ -112,7 +114,7 @@ func readFact(n *node) Fact {
 		n.problem("default", fmt.Sprintf("found %q", f.Default), "allowed: "+quoteAll(allowed))
 	}
 	n.checkValues("values", f.Values, allowed)
-	n.asked = append(n.asked, "unit", "format", "zone", "values", "default", "suffixes", "bounds")
+	n.asked = append(n.asked, "unit", "format", "zone", "values", "default", "suffixes", "bounds", "timeTitles")
 	n.done()
 	return f
 }
@@ -152,6 +154,7 @@ func (n *node) factKeys(f *Fact, form form, quantity Quantity) {
 	} else {
 		n.refuse("format", "only a date has a format")
 		n.refuse("zone", "only a date has a zone")
+		n.refuse("timeTitles", "only a date has a time of day")
 	}
 	switch form {
 	case formText:
@@ -164,8 +167,11 @@ func (n *node) factKeys(f *Fact, form form, quantity Quantity) {
 	}
 }
 
-// date reads format and zone.
+// date reads format, zone and where the time of day stands.
 func (n *node) date(f *Fact) {
+	if f.Times = n.titles("timeTitles"); n.has("timeTitles") && !n.has("titles") {
+		n.problem("timeTitles", "found without titles", "state in titles which line of the dump has the day")
+	}
 	if s := n.text("format"); n.has("format") && n.isText("format") {
 		p, err := ParsePattern(s)
 		if err != nil {
@@ -184,9 +190,11 @@ func (n *node) date(f *Fact) {
 
 // readIndicated reads one entry of indicated.
 func readIndicated(n *node) Indicated {
-	i := Indicated{Titles: n.titles("titles"), Written: Written{Unit: n.unit(Volume)}, Kind: n.word("kind", Kinds()...),
+	i := Indicated{Titles: n.titles("titles"), Columns: n.titles("columns"), Written: Written{Unit: n.unit(Volume, Mass)}, Kind: n.word("kind", Kinds()...),
 		KindTitles: n.titles("kindTitles"), KindValues: n.values("kindValues")}
-	n.need("titles")
+	if !n.has("titles") && !n.has("columns") {
+		n.problem("", "neither titles nor columns", "state where the endpoint stands in a dump")
+	}
 	n.glued(&i.Written)
 	n.checkValues("kindValues", i.KindValues, Kinds())
 	if n.has("kindValues") && !n.has("kindTitles") {
@@ -215,17 +223,23 @@ const Numbered = "{n}"
 // maxNumbered is how many numbered endpoints of one run are looked for.
 const maxNumbered = 9
 
-// numbered writes the entries whose titles have {n} out for each number.
-func numbered(list []Indicated) []Indicated {
+// numbered writes the entries whose titles have {n} out for each number. In
+// the layout wide the {n} of a column is the number of its run.
+func numbered(list []Indicated, layout Layout) []Indicated {
 	var all []Indicated
+	counted := func(t string) bool { return strings.Contains(t, Numbered) }
 	for _, one := range list {
-		if !slices.ContainsFunc(one.Titles, func(t string) bool { return strings.Contains(t, Numbered) }) {
+		columns := layout != Wide && slices.ContainsFunc(one.Columns, counted)
+		if !columns && !slices.ContainsFunc(one.Titles, counted) {
 			all = append(all, one)
 			continue
 		}
 		for n := 1; n <= maxNumbered; n++ {
 			next := one
 			next.Titles, next.KindTitles = withNumber(one.Titles, n), withNumber(one.KindTitles, n)
+			if columns {
+				next.Columns = withNumber(one.Columns, n)
+			}
 			all = append(all, next)
 		}
 	}

@@ -39,7 +39,7 @@ func Parse(path string, src []byte) (*Schema, error) {
 	if err := file.err(); err != nil {
 		return nil, err
 	}
-	s.Indicated = numbered(s.Indicated)
+	s.Indicated = numbered(s.Indicated, s.Layout)
 	return s, nil
 }
 
@@ -144,6 +144,7 @@ func (d *Dialect) read(n *node) {
 	d.QuoteChar = n.char("quoteChar", '"')
 	d.CommentChar = n.char("commentChar", 0)
 	d.EscapeChar = n.char("escapeChar", 0)
+	d.Repeated = n.flag("delimiterRepeated")
 	d.GroupChar = n.text("groupChar")
 	if d.GroupChar != "" && (utf8.RuneCountInString(d.GroupChar) != 1 || strings.ContainsAny(d.GroupChar, "0123456789+-eE\r\n")) {
 		n.problem("groupChar", fmt.Sprintf("found %q", d.GroupChar), "one character that no number has is allowed, for any blank \" \"")

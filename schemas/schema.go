@@ -79,6 +79,7 @@ type Dialect struct {
 	QuoteChar     byte
 	CommentChar   byte
 	EscapeChar    byte     // takes its meaning from the character behind it
+	Repeated      bool     // several delimiters part two cells once; those at the ends of a line none
 	DecimalChar   byte     // '.' or ','
 	GroupChar     string   // between groups of three digits; "" for none, " " for any blank of Unicode's four
 	HeaderRows    []int    // rows of the header that make the titles, from 1; nil for one
@@ -211,6 +212,7 @@ const (
 const (
 	StatusReading  = "reading"   // the row is a reading
 	StatusTimedOut = "timed-out" // it is one that had not come to rest
+	StatusDose     = "dose"      // it is none, and titrant was delivered: the row must say how much
 	StatusSkip     = "skip"      // it is none
 )
 
@@ -234,6 +236,7 @@ type Fact struct {
 	File    Capture  // the part of the file's name that is the fact
 	Folder  Capture  // the part of its folder's name
 	Written          // of a number; the unit is zero for an end reading in the unit of the readings
+	Times   []string // of a date: keys of its time of day, where that stands by itself
 	Format  Pattern  // of a date; zero for ISO 8601
 	Zone    Zone     // of a date that states none; zero when not known
 	Values  []Value  // what the texts of the dump mean; empty when they mean themselves
@@ -246,7 +249,8 @@ type Value struct{ Text, Means string }
 
 // Indicated maps statements of the dump to one indicated endpoint.
 type Indicated struct {
-	Titles []string
+	Titles  []string
+	Columns []string // header texts of a column that has it in every row
 	Written
 	Kind       string   // when the dump does not state it; "" for break in conductivity runs, else inflection
 	KindTitles []string // keys of the statement of the kind

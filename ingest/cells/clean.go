@@ -13,7 +13,7 @@ const MaxTextRunes = 200
 
 // Clean makes text of a dump safe to show: blanks around it taken away,
 // characters that have no sign of their own or that turn the direction of a
-// line replaced by U+FFFD, the length limited.
+// line replaced by U+FFFD, a tab by a blank, the length limited.
 func Clean(b []byte) (s string, replaced, cut bool) {
 	s = strings.TrimSpace(string(b))
 	if plainASCII(s) {
@@ -30,6 +30,9 @@ func Clean(b []byte) (s string, replaced, cut bool) {
 			break
 		}
 		n++
+		if r == '\t' {
+			r = ' '
+		}
 		if !showable(r) {
 			r, replaced = utf8.RuneError, true
 		}

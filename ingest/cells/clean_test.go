@@ -12,7 +12,7 @@ func TestCleanedText(t *testing.T) {
 	}{
 		{" plain ", "plain", false, false},
 		{"Süßwasser – 日本 😀", "Süßwasser – 日本 😀", false, false},
-		{"a\tb\x00c\x7f", "a\ufffdb\ufffdc\ufffd", true, false},
+		{"a\tb\x00c\x7f", "a b\ufffdc\ufffd", true, false},
 		{"a\u0085b\u2028c\u2029d\u202ee\ufefff\ue000g", "a\ufffdb\ufffdc\ufffdd\ufffde\ufffdf\ufffdg", true, false},
 		{"\u0645\u06cc\u200c\u062e", "\u0645\u06cc\u200c\u062e", false, false},
 		{"bad\xffbyte", "bad\ufffdbyte", true, false},

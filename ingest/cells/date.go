@@ -3,6 +3,7 @@ package cells
 import (
 	"errors"
 	"fmt"
+	"strings"
 	"time"
 
 	"lastdrop/schemas"
@@ -111,6 +112,8 @@ func (c *clock) directive(s string, d byte) (rest string, err error) {
 		return rest, err
 	case 'm':
 		return digitsInto(&c.month, s, 1, 2)
+	case 'b':
+		return c.readMonth(s)
 	case 'd':
 		return digitsInto(&c.day, s, 1, 2)
 	case 'H', 'I':
@@ -142,6 +145,18 @@ func digitsInto(v *int, s string, least, most int) (rest string, err error) {
 		return s, errNoDate
 	}
 	return s[n:], nil
+}
+
+// readMonth reads the first three letters of an English month, upper and lower
+// case alike. Source: %b of strptime in the locale C.
+func (c *clock) readMonth(s string) (rest string, err error) {
+	for m := time.January; m <= time.December && len(s) >= 3; m++ {
+		if strings.EqualFold(s[:3], m.String()[:3]) {
+			c.month = int(m)
+			return s[3:], nil
+		}
+	}
+	return s, errNoDate
 }
 
 func (c *clock) readHalf(s string) (rest string, err error) {

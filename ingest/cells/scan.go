@@ -59,6 +59,7 @@ type Scanner struct {
 	Body                      []byte
 	Delimiter, Quote, Comment byte
 	Escape                    byte // takes its meaning from the character behind it
+	Repeated                  bool // several delimiters part two cells once; those at the ends of a line none
 	pos, line                 int
 }
 
@@ -119,8 +120,12 @@ func (s *Scanner) scanCells(r *Row) {
 	body, delimiter := s.Body, s.Delimiter
 	i := s.pos
 	for {
-		for i < len(body) && s.isBlank(body[i]) {
+		for i < len(body) && (s.isBlank(body[i]) || s.Repeated && body[i] == delimiter) {
 			i++
+		}
+		if s.Repeated && len(r.Cells) > 0 && (i == len(body) || body[i] == '\n' || body[i] == '\r') {
+			s.endLine(r, i)
+			return
 		}
 		if i < len(body) && s.Quote != 0 && body[i] == s.Quote {
 			if i = s.quotedCell(r, i); r.Fault != "" {

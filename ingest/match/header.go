@@ -15,7 +15,7 @@ import (
 // Scanner is the scanner of a schema's dialect.
 func Scanner(t *cells.Text, s *schemas.Schema) cells.Scanner {
 	d := &s.Dialect
-	return cells.Scanner{Body: t.Body, Delimiter: d.Delimiter, Quote: d.QuoteChar, Comment: d.CommentChar, Escape: d.EscapeChar}
+	return cells.Scanner{Body: t.Body, Delimiter: d.Delimiter, Quote: d.QuoteChar, Comment: d.CommentChar, Escape: d.EscapeChar, Repeated: d.Repeated}
 }
 
 // Equal reports whether a text of a dump is a title, upper and lower case
@@ -84,7 +84,7 @@ func FitOf(s *schemas.Schema, scan *cells.Scanner, row *cells.Row) Fit {
 func (h *Fit) see(s *schemas.Schema, b []byte) {
 	f := FieldOf(s, b)
 	if f == nil {
-		if FactOf(s, b) != nil {
+		if StatedBy(s, b).Title != "" {
 			h.known++
 		} else if _, fault := cells.ParseNumber(b, s.Dialect.DecimalChar, 0); fault == cells.NumberOK {
 			h.numbers = true
@@ -96,16 +96,48 @@ func (h *Fit) see(s *schemas.Schema, b []byte) {
 	h.reading = h.reading || f.Role.IsReading()
 }
 
-// FactOf returns the fact whose column has this header text, nil for none.
-func FactOf(s *schemas.Schema, b []byte) *schemas.Fact {
+// Stated is what a column states in every row of a run.
+type Stated struct {
+	What  string // "fact sample", "indicated"
+	Title string // in the schema; "" when the column states nothing
+}
+
+// StatedBy returns what the column with this header text states.
+func StatedBy(s *schemas.Schema, b []byte) Stated {
 	for i := range s.Facts {
-		for _, t := range s.Facts[i].Columns {
-			if Equal(b, t) {
-				return &s.Facts[i]
-			}
+		if t := titleOf(s, b, s.Facts[i].Columns); t != "" {
+			return Stated{"fact " + string(s.Facts[i].Name), t}
 		}
 	}
-	return nil
+	for i := range s.Indicated {
+		if t := titleOf(s, b, s.Indicated[i].Columns); t != "" {
+			return Stated{"indicated", t}
+		}
+	}
+	return Stated{}
+}
+
+// titleOf returns the title that a header text is, "" for none.
+func titleOf(s *schemas.Schema, b []byte, titles []string) string {
+	for _, t := range titles {
+		if Equal(b, t) || s.Layout == schemas.Wide && isNumbered(b, t) {
+			return t
+		}
+	}
+	return ""
+}
+
+// NumberOf returns the number for {n} in a header text, without leading zeros;
+// "" when it is none of the titles with {n}.
+func NumberOf(b []byte, titles ...string) string {
+	for _, t := range titles {
+		if isNumbered(b, t) {
+			before, after, _ := strings.Cut(t, schemas.Numbered)
+			digits := bytes.TrimLeft(b[len(before):len(b)-len(after)], "0")
+			return "n" + string(digits)
+		}
+	}
+	return ""
 }
 
 // Titles returns the header texts of the columns when the row at hand is the
