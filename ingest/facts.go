@@ -3,9 +3,13 @@ package ingest
 import (
 	"bytes"
 	"fmt"
+	"path"
 	"slices"
+	"strings"
 
 	"lastdrop/ingest/cells"
+	"lastdrop/ingest/match"
+	"lastdrop/ingest/plausible"
 	"lastdrop/schemas"
 )
 
@@ -15,28 +19,62 @@ import (
 func (d *draft) applyFacts() {
 	for i := range d.schema.Facts {
 		rule := &d.schema.Facts[i]
-		s := d.find(string(rule.Name), rule.Titles)
+		s := d.find(string(rule.Name), rule.Titles, rule.Columns)
+		if s == nil {
+			s = d.fromName(rule)
+		}
 		switch {
 		case s != nil:
 			d.applyFact(rule, s)
 		case rule.Default != "":
 			*d.textSlot(rule.Name) = rule.Default
+		case rule.Number != nil:
+			d.applyConstant(rule)
 		case rule.Name == schemas.FactReadings && d.fault == nil: // else it may be lost with the rest
 			d.refuse(d.lastLine, 0, -1, "readings", "the dump does not state how many rows the run has", fmt.Sprintf("schema %s expects it; the line is lost: export the dump again", d.schema.Name))
 		}
 	}
 	d.applyIndicated()
+	d.applyResults()
 	d.otherFacts()
+}
+
+// fromName takes a fact out of the name of the dump or of its folder, nil
+// when they do not state it.
+func (d *draft) fromName(rule *schemas.Fact) *statement {
+	folder, file := path.Split(strings.ReplaceAll(d.path, `\`, "/"))
+	value := rule.File.Of(file)
+	if value == "" {
+		value = rule.Folder.Of(path.Base(folder))
+	}
+	if value == "" {
+		return nil
+	}
+	return &statement{key: []byte("file name"), value: []byte(value), at: -1}
+}
+
+// applyConstant takes a number that the schema states, where the dump does not.
+func (d *draft) applyConstant(rule *schemas.Fact) {
+	v := *rule.Number
+	if l := plausible.Of(string(rule.Name)); !l.Admits(v) {
+		d.refuse(d.line, 0, -1, string(rule.Name), l.Breaks(v), fmt.Sprintf("correct the default in schema %s", d.schema.Name))
+		return
+	}
+	if rule.Name == schemas.FactTemperature {
+		d.run.Facts.TemperatureC = &v
+		return
+	}
+	*d.numberSlot(rule.Name) = &v
 }
 
 // find returns the one statement with a key among the titles, nil for none.
 // A fact that is stated twice with different values refuses the run, for
 // nobody can tell which one holds.
-func (d *draft) find(field string, titles []string) *statement {
+func (d *draft) find(field string, titles, columns []string) *statement {
 	var found *statement
 	for i := range d.statements {
 		s := &d.statements[i]
-		if !equalFold(s.key, titles) {
+		if !equalFold(s.key, titles) && !equalFold(s.key, columns) {
 			continue
 		}
 		s.used = true
@@ -45,7 +83,7 @@ func (d *draft) find(field string, titles []string) *statement {
 		case found == nil:
 			found = s
 		case bytes.Equal(found.value, s.value):
-			d.repairs.add(s.line, fmt.Sprintf("%s stated again", field))
+			d.repairs.Add(s.line, fmt.Sprintf("%s stated again", field))
 		default:
 			d.refuse(s.line, s.start, s.at, field, fmt.Sprintf("%s here, %s in line %d", cells.Quoted(s.value), cells.Quoted(found.value), found.line), "a fact may be stated once; export the dump again")
 		}
@@ -58,19 +96,19 @@ func (d *draft) applyFact(rule *schemas.Fact, s *statement) {
 	case schemas.FactStarted:
 		date, err := cells.ParseDate(string(s.value), rule.Format, rule.Zone)
 		if err != nil {
-			d.repairs.add(s.line, fmt.Sprintf("started: %s %v; the fact is not used", cells.Quoted(s.value), err))
+			d.repairs.Add(s.line, fmt.Sprintf("started: %s %v; the fact is not used", cells.Quoted(s.value), err))
 		}
 		d.run.Facts.Started = date
 	case schemas.FactReadings:
 		d.checkCount(s)
 	case schemas.FactRun: // has joined the footer row to its run
 	case schemas.FactTemperature:
-		if _, v, why, _ := d.quantity(s.value, rule.Unit, limitOf(string(rule.Name))); why != "" {
-			d.repairs.add(s.line, fmt.Sprintf("%s: %s; the fact is not used", rule.Name, why))
+		if _, v, why, _ := d.quantity(s.value, s.line, &rule.Written, plausible.Of(string(rule.Name))); why != "" {
+			d.repairs.Add(s.line, fmt.Sprintf("%s: %s; the fact is not used", rule.Name, why))
 		} else {
 			d.run.Facts.TemperatureC = &v
 		}
-	case schemas.FactTitrantMol, schemas.FactAliquot, schemas.FactSolvent, schemas.FactEndReading:
+	case schemas.FactTitrantMol, schemas.FactAliquot, schemas.FactSolvent, schemas.FactEndReading, schemas.FactDensity, schemas.FactCell:
 		d.applyNumber(rule, s)
 	default:
 		*d.textSlot(rule.Name) = d.factText(rule, s)
@@ -79,23 +117,23 @@ func (d *draft) applyFact(rule *schemas.Fact, s *statement) {
 
 // applyNumber reads a number that enters arithmetic.
 func (d *draft) applyNumber(rule *schemas.Fact, s *statement) {
-	unit, l := rule.Unit, limitOf(string(rule.Name))
+	written, l := rule.Written, plausible.Of(string(rule.Name))
 	if rule.Name == schemas.FactEndReading {
 		readings := d.columns.fields
 		if d.columns.reading < 0 {
 			return // the header has been refused
 		}
 		own := readings[d.columns.reading].Unit
-		if unit.Code == "" {
-			unit = own
+		if written.Unit.Code == "" {
+			written.Unit = own
 		}
-		if unit.Quantity != own.Quantity {
+		if unit := written.Unit; unit.Quantity != own.Quantity {
 			d.refuse(s.line, s.start, s.at, string(rule.Name), fmt.Sprintf("a %s in a run whose readings are %s", unit.Quantity, own.Quantity), "export it again, or state in the schema what the fact is")
 			return
 		}
-		l = limitOf(string(own.Quantity))
+		l = plausible.Of(string(own.Quantity))
 	}
-	_, v, why, hint := d.quantity(s.value, unit, l)
+	_, v, why, hint := d.quantity(s.value, s.line, &written, l)
 	if why != "" {
 		d.refuse(s.line, s.start, s.at, string(rule.Name), why, hint)
 		return
@@ -133,6 +171,10 @@ func (d *draft) numberSlot(name schemas.FactName) **float64 {
 		return &f.AliquotML
 	case schemas.FactSolvent:
 		return &f.SolventML
+	case schemas.FactDensity:
+		return &d.densityGML
+	case schemas.FactCell:
+		return &d.cellPerCM
 	}
 	return &f.EndReading
 }
@@ -141,7 +183,7 @@ func (d *draft) numberSlot(name schemas.FactName) **float64 {
 func (d *draft) factText(rule *schemas.Fact, s *statement) string {
 	text := d.cleaned(string(rule.Name), s)
 	for _, v := range rule.Values {
-		if foldEqual([]byte(text), v.Text) {
+		if match.Equal([]byte(text), v.Text) {
 			return v.Means
 		}
 	}
@@ -149,9 +191,9 @@ func (d *draft) factText(rule *schemas.Fact, s *statement) string {
 	if allowed == nil {
 		return text
 	}
-	i := slices.IndexFunc(allowed, func(a string) bool { return foldEqual([]byte(text), a) })
+	i := slices.IndexFunc(allowed, func(a string) bool { return match.Equal([]byte(text), a) })
 	if i < 0 {
-		d.repairs.add(s.line, fmt.Sprintf("%s: %s is not known; the fact is not used", rule.Name, cells.Quoted(s.value)))
+		d.repairs.Add(s.line, fmt.Sprintf("%s: %s is not known; the fact is not used", rule.Name, cells.Quoted(s.value)))
 		return ""
 	}
 	return allowed[i]
@@ -161,10 +203,10 @@ func (d *draft) factText(rule *schemas.Fact, s *statement) string {
 func (d *draft) cleaned(field string, s *statement) string {
 	text, replaced, cut := cells.Clean(s.value)
 	if replaced {
-		d.repairs.add(s.line, fmt.Sprintf("%s: characters that cannot be shown replaced", field))
+		d.repairs.Add(s.line, fmt.Sprintf("%s: characters that cannot be shown replaced", field))
 	}
 	if cut {
-		d.repairs.add(s.line, fmt.Sprintf("%s: cut to %d characters", field, cells.MaxTextRunes))
+		d.repairs.Add(s.line, fmt.Sprintf("%s: cut to %d characters", field, cells.MaxTextRunes))
 	}
 	return text
 }
@@ -192,9 +234,9 @@ func (d *draft) otherFacts() {
 		}
 		key, _, _ := cells.Clean(s.key)
 		if near := d.nearKey(string(s.key)); near != "" {
-			d.repairs.add(s.line, fmt.Sprintf("%s is nearly %q, kept as it is", cells.Quoted(s.key), near))
+			d.repairs.Add(s.line, fmt.Sprintf("%s is nearly %q, kept as it is", cells.Quoted(s.key), near))
 		} else if d.schema.Preamble.Lines == schemas.CellLines {
-			d.repairs.add(s.line, fmt.Sprintf("%s is not in schema %s, kept as it is", cells.Quoted(s.key), d.schema.Name))
+			d.repairs.Add(s.line, fmt.Sprintf("%s is not in schema %s, kept as it is", cells.Quoted(s.key), d.schema.Name))
 		}
 		d.run.Facts.Other = append(d.run.Facts.Other, Fact{key, d.cleaned(key, s)})
 	}

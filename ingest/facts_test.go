@@ -131,7 +131,7 @@ func TestMissingMarksAndSiemens(t *testing.T) {
 		t.Fatal(err)
 	}
 	set := []*schemas.Schema{s}
-	run := readOne(t, []byte("units\nV;k\n0;0,42596\n0;1\n0;1\n0;1\n0;1\n"), set)
+	run := readOne(t, []byte("units\nV;k\n0;0,42596\n0,001;1\n0,002;1\n0,003;1\n0,004;1\n"), set)
 	if run.Signal != Conductivity || run.Readings[0].Value != 4.2596 || run.ReadingStep != 1e-4 {
 		t.Errorf("%s %v step %v, want conductivity 4.2596 step 0.0001", run.Signal, run.Readings[0].Value, run.ReadingStep)
 	}

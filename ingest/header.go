@@ -3,22 +3,52 @@ package ingest
 import (
 	"bytes"
 	"fmt"
+	"slices"
 	"strings"
 
 	"lastdrop/ingest/cells"
+	"lastdrop/ingest/match"
+	"lastdrop/ingest/plausible"
 	"lastdrop/schemas"
 )
 
-// columns is a header row bound to the fields of a schema: the index of each
+// The columns that a run can do without, by their index.
+const (
+	timeColumn = iota
+	temperatureColumn
+	driftColumn
+	optionalColumns
+)
+
+// columns is a header bound to the fields of a schema: the index of each
 // column, -1 for none.
 type columns struct {
-	volume, reading, time, temperature, number, run int
+	volume, reading, number, run, status, remark int
 
-	fields []*schemas.Field // by column; nil for an unknown one
-	limits []*limit         // by column, of its quantity
-	signal Signal
-	width  int
-	line   int
+	optional [optionalColumns]int
+	facts    []factColumn
+	titles   [][]byte
+	fields   []*schemas.Field   // by column; nil for an unknown one
+	limits   []*plausible.Limit // by column, of its quantity
+	signal   Signal
+	width    int
+	line     int
+	text     []byte // the first row as it stands, to know it again
+	rows     int
+	plain    bool // every row is a reading, and its volume and reading stand in it
+}
+
+// factColumn is a column that states a fact of the run in every row.
+type factColumn struct {
+	index int
+	fact  *schemas.Fact
+}
+
+func newColumns(titles [][]byte, row *cells.Row, body []byte, rows int) *columns {
+	n := len(titles)
+	return &columns{volume: -1, reading: -1, number: -1, run: -1, status: -1, remark: -1, optional: [optionalColumns]int{-1, -1, -1},
+		titles: titles, fields: make([]*schemas.Field, n), limits: make([]*plausible.Limit, n),
+		width: n, line: row.Line, text: body[row.From:row.To], rows: rows}
 }
 
 // signals by role of the reading.
@@ -26,140 +56,127 @@ func signalOf(r schemas.Role) Signal {
 	switch r {
 	case schemas.RolePotential:
 		return Potential
-	case schemas.RoleConductivity:
+	case schemas.RoleConductivity, schemas.RoleConductance:
 		return Conductivity
 	}
 	return PH
 }
 
-func foldEqual(b []byte, title string) bool {
-	return len(b) > 0 && bytes.EqualFold(b, []byte(title))
-}
-
-// fieldOf returns the field that a header text names, nil for none. Upper and
-// lower case count only where they alone tell two fields apart (t and T).
-func fieldOf(s *schemas.Schema, b []byte) *schemas.Field {
-	var alike *schemas.Field
-	ambiguous := false
-	for i := range s.Fields {
-		f := &s.Fields[i]
-		for _, t := range f.Titles {
-			if string(b) == t {
-				return f
-			}
-			if foldEqual(b, t) {
-				ambiguous = ambiguous || alike != nil && alike != f
-				alike = f
-			}
-		}
-	}
-	if ambiguous {
-		return nil
-	}
-	return alike
-}
-
-// headerFit says how a row stands to the fields of a schema.
-type headerFit struct {
-	volume, reading bool
-	known           int  // cells that are header texts
-	numbers         bool // some cell is a number
-}
-
-// complete: a row by which a dump can be recognised.
-func (h headerFit) complete() bool { return h.volume && h.reading && !h.numbers }
-
-// meant: a row that can only have been meant as the header, even when a
-// column that the run needs is missing.
-func (h headerFit) meant() bool { return !h.numbers && (h.known >= 2 || h.volume) }
-
-func fitHeader(s *schemas.Schema, scan *cells.Scanner, row *cells.Row) headerFit {
-	var h headerFit
-	if len(row.Cells) < 2 || row.Fault != "" {
-		return h
-	}
-	for _, c := range row.Cells {
-		b := scan.Bytes(c)
-		f := fieldOf(s, b)
-		if f == nil {
-			if _, fault := cells.ParseNumber(b, s.Dialect.DecimalChar, 0); fault == cells.NumberOK {
-				h.numbers = true
-			}
-			continue
-		}
-		h.known++
-		h.volume = h.volume || f.Role == schemas.RoleVolume
-		h.reading = h.reading || f.Role.IsReading()
-	}
-	return h
-}
-
 // bind binds the row at hand as the header of the run.
 func (d *draft) bind() {
+	c := d.bindTitles()
+	for i, text := range c.titles {
+		d.bindColumn(c, i, text)
+	}
+	d.needColumns(c)
+	d.passHeader()
+}
+
+// bindTitles makes the columns of the header at hand, none of them bound.
+func (d *draft) bindTitles() *columns {
 	if d.row.DropEmptyTail(1) {
-		d.repairs.add(d.row.Line, trailingDropped)
+		d.repairs.Add(d.row.Line, trailingDropped)
 	}
-	c := &columns{volume: -1, reading: -1, time: -1, temperature: -1, number: -1, run: -1,
-		width: len(d.row.Cells), line: d.row.Line, fields: make([]*schemas.Field, len(d.row.Cells)), limits: make([]*limit, len(d.row.Cells))}
-	d.columns, d.lastLine = c, d.row.Line
+	titles, rows := match.Titles(d.schema, &d.scan, &d.row)
+	d.columns = newColumns(titles, &d.row, d.text.Body, rows)
+	d.lastLine = d.row.Line
 	d.blanks = d.blanks[:0]
-	for i, at := range d.row.Cells {
-		text := d.scan.Bytes(at)
-		f := fieldOf(d.schema, text)
-		if f == nil {
-			d.repairs.add(d.row.Line, fmt.Sprintf("column %s not used", cells.Quoted(text)))
-			continue
-		}
-		c.fields[i], c.limits[i] = f, limitOf(string(f.Unit.Quantity))
-		d.bindColumn(c.slot(f.Role), i, f, at)
+	return d.columns
+}
+
+// passHeader passes the rows of the header after the first.
+func (d *draft) passHeader() {
+	for n := 1; n < d.columns.rows && d.scan.Next(&d.row); n++ {
+		d.lastLine = d.row.Line
 	}
-	d.needColumns()
+	d.columns.bound()
+}
+
+// bound finds out whether the rows are plain.
+func (c *columns) bound() {
+	special := func(i int) bool {
+		return i >= 0 && c.fields[i] != nil && (c.fields[i].Empty != schemas.EmptyRefused || c.fields[i].Refills || c.fields[i].Role == schemas.RoleIncrement)
+	}
+	c.plain = c.facts == nil && c.remark < 0 && c.status < 0 && !special(c.volume) && !special(c.reading)
+}
+
+// bindColumn binds one column by its header text.
+func (d *draft) bindColumn(c *columns, i int, text []byte) {
+	f := match.FieldOf(d.schema, text)
+	if f == nil {
+		if fact := match.FactOf(d.schema, text); fact != nil {
+			c.facts = append(c.facts, factColumn{i, fact})
+			return
+		}
+		d.repairs.Add(d.row.Line, fmt.Sprintf("column %s not used", cells.Quoted(text)))
+		return
+	}
+	slot := c.slot(f.Role)
+	if slot == nil {
+		c.fields[i] = f
+		return
+	}
+	if *slot >= 0 {
+		d.refuseRow(d.cellAt(i), string(f.Role), fmt.Sprintf("a second column, %s, beside the %s of column %d", cells.Quoted(text), c.fields[*slot].Role, *slot+1),
+			"a run has one volume and one reading; export it again with one of them")
+		return
+	}
+	*slot = i
+	c.take(i, f)
+}
+
+// take makes column i one of the field.
+func (c *columns) take(i int, f *schemas.Field) {
+	c.fields[i], c.limits[i] = f, plausible.Of(string(f.Unit.Quantity))
+	if f.Role == schemas.RoleTime {
+		c.limits[i] = plausible.Of(string(schemas.Duration))
+	}
+	if f.Role.IsReading() {
+		c.signal = signalOf(f.Role)
+	}
+}
+
+// cellAt is where column i stands in the row at hand.
+func (d *draft) cellAt(i int) int {
+	if i < len(d.row.Cells) {
+		return d.row.Cells[i].From
+	}
+	return d.row.To
 }
 
 // slot is where the index of a role is kept; nil for unused columns.
 func (c *columns) slot(r schemas.Role) *int {
 	switch r {
-	case schemas.RoleVolume:
+	case schemas.RoleVolume, schemas.RoleIncrement:
 		return &c.volume
 	case schemas.RoleTime:
-		return &c.time
+		return &c.optional[timeColumn]
 	case schemas.RoleTemperature:
-		return &c.temperature
+		return &c.optional[temperatureColumn]
+	case schemas.RoleDrift:
+		return &c.optional[driftColumn]
 	case schemas.RoleNumber:
 		return &c.number
 	case schemas.RoleRun:
 		return &c.run
+	case schemas.RoleStatus:
+		return &c.status
+	case schemas.RoleRemark:
+		return &c.remark
 	case schemas.RoleUnused:
 		return nil
 	}
 	return &c.reading
 }
 
-func (d *draft) bindColumn(slot *int, i int, f *schemas.Field, at cells.Cell) {
-	if slot == nil {
-		return
-	}
-	if *slot >= 0 {
-		first := d.columns.fields[*slot]
-		d.refuseRow(at.From, string(f.Role), fmt.Sprintf("a second column, %s, beside the %s of column %d", cells.Quoted(d.scan.Bytes(at)), first.Role, *slot+1),
-			"a run has one volume and one reading; export it again with one of them")
-		return
-	}
-	*slot = i
-	if f.Role.IsReading() {
-		d.columns.signal = signalOf(f.Role)
-	}
-}
-
 // needColumns reports what the header lacks.
-func (d *draft) needColumns() {
-	c := d.columns
+func (d *draft) needColumns(c *columns) {
 	if c.volume >= 0 && c.reading >= 0 && (c.run >= 0 || d.schema.Layout != schemas.Long) {
 		return
 	}
 	var has []string
-	for _, at := range d.row.Cells {
-		has = append(has, cells.Quoted(d.scan.Bytes(at)))
+	for _, text := range c.titles {
+		has = append(has, cells.Quoted(text))
 	}
 	lacks := "reading"
 	if c.volume < 0 {
@@ -167,27 +184,36 @@ func (d *draft) needColumns() {
 	} else if c.reading >= 0 {
 		lacks = "run"
 	}
-	d.refuseRow(d.row.From, lacks, fmt.Sprintf("no such column in the header (has %s)", strings.Join(has, ", ")), headerWanted(d.schema))
+	d.refuseRow(d.row.From, lacks, fmt.Sprintf("no such column in the header (has %s)", strings.Join(has, ", ")), match.Wanted(d.schema))
 }
 
-// headerWanted says which header texts a schema needs.
-func headerWanted(s *schemas.Schema) string {
-	var volume, reading, run []string
-	for _, f := range s.Fields {
-		for _, t := range f.Titles {
-			switch {
-			case f.Role == schemas.RoleVolume:
-				volume = append(volume, cells.Quoted([]byte(t)))
-			case f.Role.IsReading():
-				reading = append(reading, cells.Quoted([]byte(t)))
-			case f.Role == schemas.RoleRun:
-				run = append(run, cells.Quoted([]byte(t)))
-			}
+// headerAgain passes a header that stands again inside the table, where the
+// schema permits that. It must be the same to the byte.
+func (d *draft) headerAgain() bool {
+	if !d.schema.RepeatedHeader || !bytes.Equal(d.text.Body[d.row.From:d.row.To], d.columns.text) {
+		return false
+	}
+	d.repairs.Add(d.row.Line, "the header again, passed over")
+	for n := 1; n < d.columns.rows && d.scan.Next(&d.row); n++ {
+		d.lastLine = d.row.Line
+	}
+	return true
+}
+
+// columnFacts takes the facts that columns state; the same text in every row
+// is one statement.
+func (d *draft) columnFacts() {
+	facts := d.columns.facts
+	if d.factSeen == nil {
+		d.factSeen = make([][]byte, len(facts))
+	}
+	for i, f := range facts {
+		c := d.row.Cells[f.index]
+		value := d.scan.Bytes(c)
+		if d.missing(value) || bytes.Equal(value, d.factSeen[i]) {
+			continue
 		}
+		d.factSeen[i] = slices.Clip(value)
+		d.addStatement(statement{key: d.columns.titles[f.index], value: value, line: d.row.Line, start: d.row.From, at: c.From})
 	}
-	wanted := []string{strings.Join(volume, " or "), strings.Join(reading, " or ")}
-	if run != nil {
-		wanted = append(wanted, strings.Join(run, " or "))
-	}
-	return fmt.Sprintf("schema %s needs a header with %s", s.Name, strings.Join(wanted, " and "))
 }

@@ -190,3 +190,15 @@ func TestRunsShareNoRoom(t *testing.T) {
 		t.Error("appending to run 1 changed run 2")
 	}
 }
+
+// What stands behind a mark is a fact when it is one cell, and told when it is
+// more: a line end may be lost.
+func TestCellsBehindMarks(t *testing.T) {
+	schema := "name=\"s\"\nlayout=\"stacked\"\nrecognise.header=true\npreamble.lines=\"cells\"\nstack={begin=\"Run\",end=\"End\"}\nfacts=[{name=\"sample\",titles=\"Run\"},{name=\"readings\",titles=\"End\"}]\n" + fieldsOf(ph)
+	run := got{schema: schema, dump: "Run,A\nV,pH\n0,3\n1,3\n2,3\n3,3\n4,3\nEnd,5\n", points: "0:3 1:3 2:3 3:3 4:3"}.check(t)
+	if run.Facts.Sample != "A" {
+		t.Errorf("sample %q, want A", run.Facts.Sample)
+	}
+	got{schema: schema, dump: "Run,A,Operator,B\nV,pH\n0,3\n1,3\n2,3\n3,3\n4,3\nEnd,5,Run,B\n", points: "0:3 1:3 2:3 3:3 4:3",
+		repairs: []string{`line 1: "Operator,B" behind "Run" not used`, `line 8: "Run,B" behind "End" not used`}}.check(t)
+}

@@ -110,7 +110,7 @@ func (l *longTable) of(name []byte) *draft {
 		d = l.begin(l.row.Line)
 		d.name = string(name)
 		d.columns, d.statements = l.head.columns, append([]statement(nil), l.head.statements...)
-		d.repairs.list = append([]repair(nil), l.head.repairs.list...)
+		d.repairs = l.head.repairs.Copy()
 		d.lastLine = l.row.Line
 		if len(name) == 0 {
 			d.refuseRow(l.row.From, "run", "the cell that names the run is empty", "the line is damaged; export the dump again")
@@ -195,7 +195,7 @@ func (l *longTable) total(d *draft, marks int) {
 		return
 	}
 	if row.DropEmptyTail(marks + len(titles)) {
-		d.repairs.add(row.Line, trailingDropped)
+		d.repairs.Add(row.Line, trailingDropped)
 	}
 	if n := len(row.Cells); n != marks+len(titles) {
 		d.refuseRow(row.To, "", fmt.Sprintf("%s in a footer row, schema %s has %d", plural(n, "cell"), l.schema.Name, marks+len(titles)), "the line is damaged; export the dump again")
@@ -204,7 +204,7 @@ func (l *longTable) total(d *draft, marks int) {
 	d.statements = slices.Grow(d.statements, len(titles))
 	for i, title := range titles {
 		c := row.Cells[marks+i]
-		d.strayQuote(c)
+		d.strayQuote(row.Line, c)
 		d.addStatement(statement{key: title, value: l.scan.Bytes(c), line: row.Line, start: row.From, at: c.From})
 	}
 }

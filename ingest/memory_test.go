@@ -16,12 +16,12 @@ func rowsOf(schema string, n int) []byte {
 	case "plain":
 		b.WriteString("volume_mL,pH\n")
 		for i := range n {
-			fmt.Fprintf(&b, "%.3f,%.2f\n", float64(i%1000), 7.0)
+			fmt.Fprintf(&b, "%.3f,%.2f\n", float64(i)/100, 7.0)
 		}
 	case "bench-a":
 		fmt.Fprintf(&b, "Bench A curve record;4\r\nReadings;%d\r\n\r\nVolume mL;pH;Temp. \xb0C\r\n", n)
 		for i := range n {
-			fmt.Fprintf(&b, "%d,000;7,00;22,4\r\n", i%1000)
+			fmt.Fprintf(&b, "%d,%02d0;7,00;22,4\r\n", i/100, i%100)
 		}
 	case "bench-b":
 		b.WriteString("bench B day log\r\n")

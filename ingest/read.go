@@ -5,6 +5,9 @@ import (
 	"slices"
 
 	"lastdrop/ingest/cells"
+	"lastdrop/ingest/match"
+	"lastdrop/ingest/plausible"
+	"lastdrop/ingest/repairs"
 	"lastdrop/schemas"
 )
 
@@ -33,21 +36,31 @@ func Read(data []byte, path string, set []*schemas.Schema) (runs []Run, schema *
 	if len(data) > MaxBytes {
 		return nil, nil, []*schemas.Problem{{Path: path, Msg: fmt.Sprintf("%d bytes", len(data)), Hint: fmt.Sprintf("a dump has at most %d bytes (64 MiB)", MaxBytes)}}
 	}
-	schema, text, problem := recognise(data, path, set)
+	found, problem := match.Recognise(data, path, set)
 	if problem != nil {
 		return nil, nil, []*schemas.Problem{problem}
 	}
-	r := &reader{schema: schema, text: text, path: path, scan: scannerOf(text, schema)}
-	if schema.Layout == schemas.Long {
-		r.long()
-	} else {
-		r.sections()
+	if len(found.Versions) == 1 {
+		schema = found.Versions[0]
+		r := readWith(schema, found.Text(schema), path)
+		return r.runs, schema, r.problems
 	}
-	return r.runs, schema, r.problems
+	return readVersions(found, path)
 }
 
-func scannerOf(t *cells.Text, s *schemas.Schema) cells.Scanner {
-	return cells.Scanner{Body: t.Body, Delimiter: s.Dialect.Delimiter, Quote: s.Dialect.QuoteChar, Comment: s.Dialect.CommentChar}
+// readWith reads a dump with one schema.
+func readWith(schema *schemas.Schema, text *cells.Text, path string) *reader {
+	r := &reader{schema: schema, text: text, path: path, scan: match.Scanner(text, schema)}
+	switch schema.Layout {
+	case schemas.Long:
+		r.long()
+	case schemas.Wide:
+		r.wideRows()
+	default:
+		r.sections()
+	}
+	r.checkVersion()
+	return r
 }
 
 // reader reads one dump with one schema.
@@ -57,19 +70,20 @@ type reader struct {
 	path     string
 	scan     cells.Scanner
 	row      cells.Row // the row at hand
-	table    table
+	common   table
 	runs     []Run
 	problems []*schemas.Problem
-	begun    int // runs begun so far
-	trailing int // line of the first line when it has trailing delimiters
+	begun    int      // runs begun so far
+	trailing int      // line of the first line when it has trailing delimiters
+	drafts   []*draft // every run, in the order of the dump
 }
 
 // begin begins the next run at a line.
 func (r *reader) begin(line int) *draft {
 	r.begun++
-	d := &draft{reader: r, number: r.begun, line: line, first: len(r.table.readings), end: len(r.table.readings)}
+	d := &draft{reader: r, table: &r.common, number: r.begun, line: line, first: len(r.common.readings), end: len(r.common.readings)}
 	if r.begun == 1 && r.trailing > 0 {
-		d.repairs.add(r.trailing, trailingDropped)
+		d.repairs.Add(r.trailing, trailingDropped)
 	}
 	return d
 }
@@ -83,7 +97,7 @@ func (r *reader) unterminated() bool {
 // passFirstLine passes the line that the schema states as evidence. The rows
 // before it are blank.
 func (r *reader) passFirstLine() {
-	if r.schema.Recognise.FirstLine == "" {
+	if r.schema.Recognise.FirstLine == "" && r.schema.Recognise.Begins == "" {
 		return
 	}
 	for r.scan.Next(&r.row) {
@@ -99,6 +113,7 @@ func (r *reader) passFirstLine() {
 
 // close takes a run into the result, or its problem.
 func (r *reader) close(d *draft) {
+	r.drafts = append(r.drafts, d)
 	if d.fault == nil {
 		r.runs = append(r.runs, d.run)
 		return
@@ -123,21 +138,34 @@ type draft struct {
 	statements   []statement
 	columns      *columns // nil before the header
 	first, end   int      // of its readings in the table
-	interleaved  bool     // rows of other runs stand between its own
+	table        *table   // that of the reader until rows of other runs come between
 	count        int      // of its readings
 	rows         int      // seen in the dump, refused ones too
 	lastLine     int      // of the last row seen
 	lastNumber   float64  // in the number column
 	lastTimeS    float64  // in the time column
+	clockZero    float64  // first time of a clock, s
+	volume       float64  // delivered so far, in a table where it is worked out
+	shown        float64  // last volume of such a table as the dump has it
+	filled       float64  // volume delivered before the burette was filled last
+	delivering   bool     // such a volume has been read
+	timedOut     int      // readings that had not come to rest
+	timedOutLine int      // of the first of them
 	volumeSteps  steps
 	readingSteps steps
-	lost         [2]bool // time, temperature: the column is not used
-	blanks       []int   // lines skipped since the last row of the table
-	decimalMarks int     // numbers with a decimal mark read so far
-	name         string  // in the column that names the run; layout long
-	orphaned     bool    // rows outside any run; layout stacked
-	total        bool    // its footer row has been seen; layout long
-	repairs      repairs
+	lost         [optionalColumns]bool // the column is not used
+	factSeen     [][]byte              // last text of each column that states a fact
+	remarks      []Remark
+	densityGML   *float64 // of a titrant that is weighed
+	cellPerCM    *float64 // constant of the conductivity cell
+	inFooter     bool
+	wide         *wideTable // layout wide, above its table
+	blanks       []int      // lines skipped since the last row of the table
+	decimalMarks int        // numbers with a decimal mark read so far
+	name         string     // in the column that names the run; layout long
+	orphaned     bool       // rows outside any run; layout stacked
+	total        bool       // its footer row has been seen; layout long
+	repairs      repairs.List
 	run          Run
 	fault        *schemas.Problem // the first in the file
 	more         int              // further ones
@@ -169,11 +197,14 @@ func (d *draft) refuseRow(at int, field, msg, hint string) {
 func (d *draft) finish() {
 	if d.columns == nil {
 		if d.fault == nil {
-			d.refuse(d.line, 0, -1, "", "no header row", headerWanted(d.schema))
+			d.refuse(d.line, 0, -1, "", "no header row", match.Wanted(d.schema))
 		}
 		return
 	}
-	d.run = Run{Number: d.number, Line: d.line, Signal: d.columns.signal}
+	if begin := d.schema.Footer.Begin; begin != "" && d.schema.Footer.Lines != "" && !d.inFooter && d.fault == nil {
+		d.refuse(d.lastLine, 0, -1, "", fmt.Sprintf("no line below the rows begins with %q", begin), "the dump is cut off; export it again")
+	}
+	d.run = Run{Number: d.number, Line: d.line, Signal: d.columns.signal, Remarks: d.remarks}
 	d.applyFacts()
 	if d.fault == nil && d.count < MinReadings {
 		d.refuse(d.lastLine, 0, -1, "", fmt.Sprintf("%s, a curve needs at least %d", plural(d.count, "reading"), MinReadings), "the curve is too short; titrate or export again")
@@ -183,7 +214,60 @@ func (d *draft) finish() {
 	}
 	d.run.ReadingStep, d.run.VolumeStepML = d.readingSteps.step(), d.volumeSteps.step()
 	d.table.fill(d)
-	d.run.Repairs = d.repairs.lines()
+	d.convert()
+	d.judge()
+	d.run.Repairs = d.repairs.Lines()
+}
+
+// convert makes volumes of a titrant that was weighed and conductivities of
+// conductances.
+func (d *draft) convert() {
+	c, run := d.columns, &d.run
+	if c.fields[c.volume].Unit.Quantity == schemas.Mass {
+		if d.densityGML == nil {
+			d.refuse(c.line, 0, -1, "density_g_per_ml", "the titrant is weighed and its density is not known", fmt.Sprintf("state it in the dump, or as a default in schema %s", d.schema.Name))
+			return
+		}
+		for i := range run.Readings {
+			run.Readings[i].VolumeML /= *d.densityGML
+		}
+		run.VolumeStepML /= *d.densityGML
+	}
+	if c.fields[c.reading].Role == schemas.RoleConductance {
+		if d.cellPerCM == nil {
+			d.refuse(c.line, 0, -1, "cell_constant_per_cm", "the readings are conductances and the cell constant is not known", fmt.Sprintf("state it in the dump, or as a default in schema %s", d.schema.Name))
+			return
+		}
+		for i := range run.Readings {
+			run.Readings[i].Value *= *d.cellPerCM
+		}
+		run.ReadingStep *= *d.cellPerCM
+	}
+	if d.timedOut > 0 {
+		d.repairs.Add(d.timedOutLine, fmt.Sprintf("%s from here on had not come to rest, used as they are", plural(d.timedOut, "reading")))
+	}
+}
+
+// judge holds the whole curve against the rules of plausibility.
+func (d *draft) judge() {
+	if d.fault != nil {
+		return
+	}
+	doubts, refusal := plausible.Judge(d.curve())
+	if refusal != nil {
+		d.refuse(refusal.Line, 0, -1, refusal.Field, refusal.Msg, refusal.Hint)
+		return
+	}
+	for _, one := range doubts {
+		d.repairs.Add(one.Line, one.Msg)
+	}
+}
+
+// curve is the run as the rules of plausibility see it.
+func (d *draft) curve() *plausible.Curve {
+	r := d.run.Readings
+	return &plausible.Curve{Signal: string(d.run.Signal), N: len(r), TimesS: d.run.TimesS, ReadingStep: d.run.ReadingStep,
+		VolumeML: func(i int) float64 { return r[i].VolumeML }, Value: func(i int) float64 { return r[i].Value }, Line: func(i int) int { return r[i].Line }}
 }
 
 func plural(n int, what string) string {
@@ -196,5 +280,5 @@ func plural(n int, what string) string {
 // equalFold reports whether b is one of the titles, upper and lower case
 // alike.
 func equalFold(b []byte, titles []string) bool {
-	return slices.ContainsFunc(titles, func(t string) bool { return foldEqual(b, t) })
+	return slices.ContainsFunc(titles, func(t string) bool { return match.Equal(b, t) })
 }

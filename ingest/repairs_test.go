@@ -1,6 +1,7 @@
 package ingest
 
 import (
+	"fmt"
 	"slices"
 	"strings"
 	"testing"
@@ -99,8 +100,8 @@ func TestOptionalColumnsAreLeftOut(t *testing.T) {
 
 func TestRepairsAreLimited(t *testing.T) {
 	dump := plainHead
-	for range 60 {
-		dump += "1,3,\n1,3\n"
+	for i := range 60 {
+		dump += fmt.Sprintf("%d,3,\n%d,3\n", i, i)
 	}
 	run := readOne(t, []byte(dump), schemas.Shipped())
 	if len(run.Repairs) != 41 || run.Repairs[40] != "and 20 more" {

@@ -39,6 +39,22 @@ type Indicated struct {
 // Fact is a fact that has no field of its own; Key is as the dump writes it.
 type Fact struct{ Key, Value string }
 
+// Result is a result that the instrument itself worked out and wrote into the
+// dump. It is kept as stated; nothing is converted.
+type Result struct {
+	Key   string // as the dump writes it
+	Value float64
+	Text  string // as the dump writes it
+	Unit  string // UCUM code, as the schema states it
+	Line  int    // in the dump, 1-based
+}
+
+// Remark is a text that the dump has about one row.
+type Remark struct {
+	Line int
+	Text string
+}
+
 // Facts are what a dump says about a run besides readings. Absent text is "",
 // an absent number is nil. JSON names are those of the record.
 type Facts struct {
@@ -71,8 +87,11 @@ type Run struct {
 	VolumeStepML  float64   // smallest step of the volumes as displayed, mL; 0 unknown
 	TimesS        []float64 // seconds since the start, one a reading; nil when the dump has none
 	TemperaturesC []float64 // °C, one a reading; nil when the dump has none
+	DriftsPerMin  []float64 // unit of the readings a minute, one a reading; nil when the dump has none
 	Indicated     []Indicated
-	Repairs       []string // each change made to read the run, with its line
+	Results       []Result
+	Remarks       []Remark // in the order of the dump
+	Repairs       []string // each change made to read the run and each doubt about its numbers, with the line
 }
 
 // Curve returns volumes (mL) and readings (in the signal's unit) as two new

@@ -6,6 +6,7 @@ import (
 	"strings"
 
 	"lastdrop/ingest/cells"
+	"lastdrop/ingest/match"
 )
 
 // statement is one key with its value, wherever the dump has it: in a
@@ -29,34 +30,34 @@ func (d *draft) addStatement(s statement) {
 		d.statements = append(d.statements, s)
 		return
 	}
-	d.repairs.add(s.line, fmt.Sprintf("more than %d facts, not used", maxStatements))
+	d.repairs.Add(s.line, fmt.Sprintf("more than %d facts, not used", maxStatements))
 }
 
 // cellStatement reads a row of key and value. A value that holds the delimiter
 // is taken whole.
 func (d *draft) cellStatement() {
 	if d.row.DropEmptyTail(2) {
-		d.repairs.add(d.row.Line, trailingDropped)
+		d.repairs.Add(d.row.Line, trailingDropped)
 	}
 	row := d.row.Cells
 	if len(row) < 2 || row[0].Empty() {
-		d.repairs.add(d.row.Line, fmt.Sprintf("%s has no key and value, not used", cells.Quoted(d.text.Body[d.row.From:d.row.To])))
+		d.repairs.Add(d.row.Line, fmt.Sprintf("%s has no key and value, not used", cells.Quoted(d.text.Body[d.row.From:d.row.To])))
 		return
 	}
 	value := row[1]
-	d.strayQuote(value)
+	d.strayQuote(d.row.Line, value)
 	if len(row) > 2 {
 		value.To, value.Quoted = row[len(row)-1].To, false
-		d.repairs.add(d.row.Line, "the value holds the delimiter and was taken whole")
+		d.repairs.Add(d.row.Line, "the value holds the delimiter and was taken whole")
 	}
 	d.state(row[0], value, false)
 }
 
 // strayQuote tells a quote within an unquoted text, which is kept: it may be
 // the rest of a damaged pair.
-func (d *draft) strayQuote(c cells.Cell) {
+func (d *draft) strayQuote(line int, c cells.Cell) {
 	if q := d.schema.Dialect.QuoteChar; q != 0 && !c.Quoted && bytes.IndexByte(d.scan.Bytes(c), q) >= 0 {
-		d.repairs.add(d.row.Line, "a quote within a text kept as it is")
+		d.repairs.Add(line, "a quote within a text kept as it is")
 	}
 }
 
@@ -66,7 +67,7 @@ func (d *draft) commentStatement() {
 	from := d.row.From
 	line := bytes.TrimRight(d.text.Body[from:d.row.To], " ")
 	if bare := bytes.TrimRight(line, " "+string(rune(d.schema.Dialect.Delimiter))); len(bare) < len(line) {
-		d.repairs.add(d.row.Line, trailingDropped) // a spreadsheet adds them when it saves the dump
+		d.repairs.Add(d.row.Line, trailingDropped) // a spreadsheet adds them when it saves the dump
 		line = bare
 	}
 	open := bytes.IndexByte(line, d.schema.Dialect.CommentChar) + 1
@@ -84,12 +85,30 @@ func (d *draft) commentStatement() {
 	d.addStatement(statement{key: key, value: rest, line: d.row.Line, start: from, at: begin + len(value) - len(rest)})
 }
 
+// textStatement reads a line of key, separator and value, whatever delimiters
+// stand in it.
+func (d *draft) textStatement() {
+	from := d.row.From
+	line := bytes.TrimRight(d.text.Body[from:d.row.To], " ")
+	if bare := bytes.TrimRight(line, " "+string(rune(d.schema.Dialect.Delimiter))); len(bare) < len(line) {
+		d.repairs.Add(d.row.Line, trailingDropped)
+		line = bare
+	}
+	at := bytes.IndexByte(line, d.schema.Preamble.Separator)
+	if at < 1 {
+		d.repairs.Add(d.row.Line, fmt.Sprintf("%s has no key and value, not used", cells.Quoted(line)))
+		return
+	}
+	value := bytes.TrimLeft(line[at+1:], " \t")
+	d.addStatement(statement{key: bytes.TrimSpace(line[:at]), value: value, line: d.row.Line, start: from, at: from + len(line) - len(value)})
+}
+
 // remark tells a comment line without separator that begins with a known key.
 func (d *draft) remark(b []byte) {
 	d.eachKey(func(title string) {
 		n := len(title)
-		if len(b) > n && foldEqual(b[:n], title) && !partOfWord(b[n]) {
-			d.repairs.add(d.row.Line, fmt.Sprintf("no %q behind %s, the fact is not used", string(d.schema.Preamble.Separator), cells.Quoted(b[:n])))
+		if len(b) > n && match.Equal(b[:n], title) && !partOfWord(b[n]) {
+			d.repairs.Add(d.row.Line, fmt.Sprintf("no %q behind %s, the fact is not used", string(d.schema.Preamble.Separator), cells.Quoted(b[:n])))
 		}
 	})
 }
@@ -115,7 +134,7 @@ func (d *draft) secondFact(value []byte) int {
 
 func (d *draft) knownKey(key []byte) bool {
 	known := false
-	d.eachKey(func(title string) { known = known || foldEqual(key, title) })
+	d.eachKey(func(title string) { known = known || match.Equal(key, title) })
 	return known
 }
 
@@ -128,6 +147,9 @@ func (d *draft) eachKey(f func(title string)) {
 	}
 	for i := range d.schema.Facts {
 		each(d.schema.Facts[i].Titles)
+	}
+	for i := range d.schema.Results {
+		each(d.schema.Results[i].Titles)
 	}
 	for i := range d.schema.Indicated {
 		each(d.schema.Indicated[i].Titles)

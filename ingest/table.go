@@ -10,63 +10,48 @@ import (
 )
 
 // table holds the rows of all runs of a dump, so that a dump costs a few
-// allocations however many runs and rows it has.
+// allocations however many runs and rows it has. A run between whose rows
+// those of others stand has a table of its own.
 type table struct {
-	readings      []Reading
-	timesS        []float64 // as long as readings once any run has times
-	temperaturesC []float64
-	owner         []int // run number of each reading; layout long only
+	readings []Reading
+	optional [optionalColumns][]float64 // as long as readings once any run has the column
 }
 
 // reserve makes room for every line that is still to come.
 func (r *reader) reserve(from int) {
-	if r.table.readings != nil {
+	if r.common.readings != nil {
 		return
 	}
+	r.common.readings = make([]Reading, 0, r.linesFrom(from))
+}
+
+// linesFrom is how many lines are still to come, at most.
+func (r *reader) linesFrom(from int) int {
 	rest := r.text.Body[from:]
-	n := max(bytes.Count(rest, []byte{'\n'}), bytes.Count(rest, []byte{'\r'})) + 1
-	r.table.readings = make([]Reading, 0, n)
+	return max(bytes.Count(rest, []byte{'\n'}), bytes.Count(rest, []byte{'\r'})) + 1
 }
 
 // fill hands the run its part of the table.
 func (t *table) fill(d *draft) {
-	run, c := &d.run, d.columns
-	if d.interleaved {
-		t.gather(d)
-	} else {
-		run.Readings = t.readings[d.first:d.end:d.end]
-		run.TimesS = part(t.timesS, d.first, d.end)
-		run.TemperaturesC = part(t.temperaturesC, d.first, d.end)
-	}
-	if c.time < 0 || d.lost[0] {
-		run.TimesS = nil
-	}
-	if c.temperature < 0 || d.lost[1] {
-		run.TemperaturesC = nil
+	run := &d.run
+	run.Readings = t.readings[d.first:d.end:d.end]
+	for i, column := range []*[]float64{&run.TimesS, &run.TemperaturesC, &run.DriftsPerMin} {
+		if d.columns.optional[i] >= 0 && !d.lost[i] && len(t.optional[i]) >= d.end {
+			*column = t.optional[i][d.first:d.end:d.end]
+		}
 	}
 }
 
-func part(all []float64, first, end int) []float64 {
-	if len(all) < end {
-		return nil
-	}
-	return all[first:end:end]
-}
-
-// gather copies the rows of a run between whose rows others stand.
-func (t *table) gather(d *draft) {
-	for i := d.first; i < d.end; i++ {
-		if t.owner[i] != d.number {
-			continue
-		}
-		d.run.Readings = append(d.run.Readings, t.readings[i])
-		if len(t.timesS) > i {
-			d.run.TimesS = append(d.run.TimesS, t.timesS[i])
-		}
-		if len(t.temperaturesC) > i {
-			d.run.TemperaturesC = append(d.run.TemperaturesC, t.temperaturesC[i])
+// own gives the run a table of its own, with its rows so far.
+func (t *table) own(d *draft) *table {
+	rows := &table{readings: append([]Reading(nil), t.readings[d.first:d.end]...)}
+	for i, column := range t.optional {
+		if len(column) >= d.end {
+			rows.optional[i] = append([]float64(nil), column[d.first:d.end]...)
 		}
 	}
+	d.first, d.end = 0, len(rows.readings)
+	return rows
 }
 
 // steps is the finest display seen in a column.
@@ -91,38 +76,92 @@ func (s *steps) step() float64 {
 
 // data reads the row at hand as a row of the table.
 func (d *draft) data() {
-	c := d.columns
-	d.rows++
-	d.lastLine = d.row.Line
-	if d.skippedBlanks(); !d.shape(c.width) || c.volume < 0 || c.reading < 0 {
+	if d.headerAgain() {
 		return
 	}
+	d.lastLine = d.row.Line
+	d.rows++
+	if d.skippedBlanks(); !d.shape(d.columns.width) || d.columns.volume < 0 || d.columns.reading < 0 {
+		return
+	}
+	d.measure()
+}
+
+// measure reads volume and reading of a row that has the right shape.
+func (d *draft) measure() {
+	c := d.columns
 	d.checkNumber()
+	if !c.plain {
+		d.special()
+		return
+	}
 	volume, ok1 := d.needed(c.volume, &d.volumeSteps)
 	value, ok2 := d.needed(c.reading, &d.readingSteps)
-	if !ok1 || !ok2 || d.fault != nil {
-		return // a run with a fault needs no readings
+	if ok1 && ok2 && d.fault == nil { // a run with a fault needs no readings
+		d.keep(volume, value)
 	}
-	t := &d.table
+}
+
+// special reads a row of a table in which not every row is a reading, or whose
+// volume is to be worked out.
+func (d *draft) special() {
+	c := d.columns
+	d.columnFacts()
+	d.remarked()
+	skip := d.skips()
+	reading := d.scan.Bytes(d.row.Cells[c.reading])
+	skip = skip || c.fields[c.reading].Empty == schemas.EmptySkip && d.missing(reading)
+	if skip && (c.fields[c.volume].Role != schemas.RoleIncrement || d.missing(d.scan.Bytes(d.row.Cells[c.volume]))) {
+		return
+	}
+	volume, ok := d.delivered()
+	if skip {
+		return
+	}
+	value, ok2 := d.needed(c.reading, &d.readingSteps)
+	if ok && ok2 && d.fault == nil {
+		d.keep(volume, value)
+	}
+}
+
+// keep adds a reading to the table.
+func (d *draft) keep(volume, value float64) {
+	t := d.table
 	at := len(t.readings)
-	t.readings = append(t.readings, Reading{VolumeML: volume, Value: value, Line: d.row.Line})
-	if c.time >= 0 {
-		t.timesS = d.optional(c.time, 0, grown(t.timesS, at, cap(t.readings)))
-	}
-	if c.temperature >= 0 {
-		t.temperaturesC = d.optional(c.temperature, 1, grown(t.temperaturesC, at, cap(t.readings)))
-	}
-	if d.schema.Layout == schemas.Long {
-		t.owner = append(t.owner, d.number)
+	if d.schema.SameVolume == schemas.SameLast && d.count > 0 && t.readings[d.end-1].VolumeML == volume {
+		at = d.end - 1
+		t.readings[at] = Reading{VolumeML: volume, Value: value, Line: d.row.Line}
+		d.keepOptional(at)
+		return
 	}
 	switch {
 	case d.count == 0:
 		d.first = at
-	case d.end != at:
-		d.interleaved = true
+	case d.end != at: // rows of other runs stand between
+		t = t.own(d)
+		d.table, at = t, d.end
 	}
+	t.readings = append(t.readings, Reading{VolumeML: volume, Value: value, Line: d.row.Line})
+	d.keepOptional(at)
 	d.end = at + 1
 	d.count++
+}
+
+// keepOptional keeps time, temperature and drift of the row at hand.
+func (d *draft) keepOptional(at int) {
+	t := d.table
+	for i, column := range d.columns.optional {
+		if column < 0 || d.lost[i] {
+			continue
+		}
+		v := d.optional(column, i)
+		t.optional[i] = grown(t.optional[i], at, cap(t.readings))
+		if len(t.optional[i]) > at {
+			t.optional[i][at] = v
+		} else {
+			t.optional[i] = append(t.optional[i], v)
+		}
+	}
 }
 
 // grown makes a column as long as the readings before the row at hand.
@@ -140,7 +179,7 @@ func grown(column []float64, n, capacity int) []float64 {
 // table.
 func (d *draft) skippedBlanks() {
 	for _, line := range d.blanks {
-		d.repairs.add(line, "blank line in the table skipped")
+		d.repairs.Add(line, "blank line in the table skipped")
 	}
 	d.blanks = d.blanks[:0]
 }
@@ -152,7 +191,7 @@ func (d *draft) shape(width int) bool {
 		return false
 	}
 	if d.row.DropEmptyTail(width) {
-		d.repairs.add(d.row.Line, trailingDropped)
+		d.repairs.Add(d.row.Line, trailingDropped)
 	}
 	n := len(d.row.Cells)
 	if n == width {
@@ -189,95 +228,4 @@ func (d *draft) checkNumber() {
 		d.refuseRow(at.From, "number", fmt.Sprintf("the first row has the number %v", n.Value), "rows before it are missing; export the dump again")
 	}
 	d.lastNumber = n.Value
-}
-
-// needed reads a volume or reading; without it the run is refused.
-func (d *draft) needed(i int, s *steps) (v float64, ok bool) {
-	at, f := d.row.Cells[i], d.columns.fields[i]
-	b := d.scan.Bytes(at)
-	n, fault := cells.ParseNumber(b, d.schema.Dialect.DecimalChar, f.Unit.Shift)
-	v, l := n.Value*f.Unit.Times+f.Unit.Plus, d.columns.limits[i]
-	if fault != cells.NumberOK || !l.admits(v) || d.missing(b) {
-		_, _, why, hint := d.quantity(b, f.Unit, l)
-		d.refuseRow(at.From, string(f.Role), why, hint)
-		return 0, false
-	}
-	s.see(n, f.Unit)
-	if n.Decimals+f.Unit.Shift > 0 {
-		d.decimalMarks++
-	}
-	return v, true
-}
-
-// optional reads a time or temperature; where one cannot be used the column is
-// left out and the run says so.
-func (d *draft) optional(i, which int, column []float64) []float64 {
-	if d.lost[which] {
-		return append(column, 0)
-	}
-	at, f := d.row.Cells[i], d.columns.fields[i]
-	_, v, why, _ := d.quantity(d.scan.Bytes(at), f.Unit, d.columns.limits[i])
-	if f.Role == schemas.RoleTime {
-		if why == "" && d.count > 0 && v < d.lastTimeS {
-			why = fmt.Sprintf("%v s after %v s, time runs backwards", v, d.lastTimeS)
-		}
-		d.lastTimeS = v
-	}
-	if why != "" {
-		d.lost[which] = true
-		d.repairs.add(d.row.Line, fmt.Sprintf("%s: %s; the column is not used", f.Role, why))
-	}
-	return append(column, v)
-}
-
-// quantity reads a number of a unit and holds it against its limit. why is ""
-// when it can be used.
-func (d *draft) quantity(b []byte, u schemas.Unit, l *limit) (n cells.Number, v float64, why, hint string) {
-	if d.missing(b) {
-		return n, 0, "the cell is empty", "the dump is damaged or the reading failed; export it again"
-	}
-	n, fault := cells.ParseNumber(b, d.schema.Dialect.DecimalChar, u.Shift)
-	if fault != cells.NumberOK {
-		why, hint = d.notNumber(b, fault)
-		return n, 0, why, hint
-	}
-	v = n.Value
-	if u.Times != 1 {
-		v *= u.Times
-	}
-	v += u.Plus
-	if why = l.breaks(v); why != "" {
-		return n, 0, why, l.hint
-	}
-	return n, v, "", ""
-}
-
-// missing reports whether a text means "not given".
-func (d *draft) missing(b []byte) bool {
-	if len(b) == 0 {
-		return true
-	}
-	for _, m := range d.schema.Dialect.MissingValues {
-		if string(b) == m {
-			return true
-		}
-	}
-	return false
-}
-
-func (d *draft) notNumber(b []byte, fault cells.NumberFault) (why, hint string) {
-	why = cells.Quoted(b) + " is not a number"
-	switch {
-	case fieldOf(d.schema, b) != nil:
-		return cells.Quoted(b) + " is the header again", "two exports in one file? export each by itself"
-	case fault == cells.NumberUnbounded:
-		return cells.Quoted(b) + " is too large", "the cell is damaged; export the dump again"
-	case fault == cells.OtherMark && d.decimalMarks > 0:
-		return why, fmt.Sprintf("other numbers of the run have the decimal mark %q; export the dump again", string(d.schema.Dialect.DecimalChar))
-	case fault == cells.OtherMark && d.schema.Dialect.DecimalChar == '.':
-		return why, `set decimalChar = "," in the schema`
-	case fault == cells.OtherMark:
-		return why, `set decimalChar = "." in the schema`
-	}
-	return why, "a plain decimal number is expected; the cell is damaged or the column is another one"
 }

@@ -4,6 +4,7 @@ import (
 	"fmt"
 	"strings"
 	"time"
+	_ "time/tzdata" // names of zones mean the same on a machine without them
 )
 
 // Pattern is a date and time pattern of strptime directives, the form that
@@ -72,8 +73,33 @@ func count(seen, letters string) int {
 	return n
 }
 
-// Zone is the offset from UTC of a dump's local times. The zero Zone means
-// that it is not known: such a time is kept without offset.
+// ParseClock checks the pattern of a time column: minute and second at least.
+// With an hour it is the time of day, else the time since the start.
+func ParseClock(s string) (Pattern, error) {
+	seen, err := seenDirectives(s)
+	if err != nil {
+		return Pattern{}, err
+	}
+	if count(seen, "M") == 0 || count(seen, "S")+count(seen, "HI") == 0 {
+		return Pattern{}, fmt.Errorf("%q lacks %%M with %%H, %%I or %%S", s)
+	}
+	if date := count(seen, "Yy") + count(seen, "m") + count(seen, "d"); date != 0 && (date != 3 || count(seen, "HI") == 0) || count(seen, "HI") > 1 || count(seen, "z") > 0 {
+		return Pattern{}, fmt.Errorf("%q is neither a time nor a date and time", s)
+	}
+	if count(seen, "I") != count(seen, "p") {
+		return Pattern{}, fmt.Errorf("%q needs %%I (12 h clock) and %%p (am, pm) together", s)
+	}
+	return Pattern{s}, nil
+}
+
+// Has reports whether the pattern has one of the directives.
+func (p Pattern) Has(letters string) bool {
+	seen, err := seenDirectives(p.text)
+	return err == nil && count(seen, letters) > 0
+}
+
+// Zone is the zone of a dump's local times. The zero Zone means that it is not
+// known: such a time is kept without offset.
 type Zone struct{ loc *time.Location }
 
 // Known reports whether the schema states a zone.
@@ -82,15 +108,22 @@ func (z Zone) Known() bool { return z.loc != nil }
 // Location is nil when the zone is not known.
 func (z Zone) Location() *time.Location { return z.loc }
 
-// ParseZone reads "UTC" or an offset such as "+02:00".
+// ParseZone reads "UTC", an offset such as "+02:00" or a name of the IANA time
+// zone database such as "Europe/Berlin". The machine's own zone is none.
 func ParseZone(s string) (Zone, error) {
 	if s == "UTC" || s == "Z" {
 		return Zone{time.UTC}, nil
 	}
-	t, err := time.Parse("-07:00", s)
-	if err != nil {
+	if t, err := time.Parse("-07:00", s); err == nil {
+		_, seconds := t.Zone()
+		return Zone{time.FixedZone(s, seconds)}, nil
+	}
+	if !strings.Contains(s, "/") { // "Local", "" and abbreviations, which mean several zones
 		return Zone{}, fmt.Errorf("%q is no offset from UTC", s)
 	}
-	_, seconds := t.Zone()
-	return Zone{time.FixedZone(s, seconds)}, nil
+	loc, err := time.LoadLocation(s)
+	if err != nil {
+		return Zone{}, fmt.Errorf("%q is no known time zone", s)
+	}
+	return Zone{loc}, nil
 }

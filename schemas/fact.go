@@ -3,8 +3,8 @@ package schemas
 // FactName names a fact of a run; the names are those of the record.
 type FactName string
 
-// The facts. The last two are not kept in the record: they let ingest check
-// the dump and join the lines of a footer to their runs.
+// The facts. The last four are not kept in the record: two enter the readings,
+// two let ingest check the dump and join the lines of a footer to their runs.
 const (
 	FactSample      FactName = "sample"
 	FactProcedure   FactName = "procedure"
@@ -19,8 +19,10 @@ const (
 	FactReaction    FactName = "reaction"
 	FactTemperature FactName = "temperature_c"
 	FactEndReading  FactName = "end_reading"
-	FactReadings    FactName = "readings" // how many rows the run has
-	FactRun         FactName = "run"      // which run a footer row is about
+	FactDensity     FactName = "density_g_per_ml"     // of the titrant, where it is weighed
+	FactCell        FactName = "cell_constant_per_cm" // where the readings are conductances
+	FactReadings    FactName = "readings"             // how many rows the run has
+	FactRun         FactName = "run"                  // which run a footer row is about
 )
 
 // form is how the value of a fact is written.
@@ -54,6 +56,8 @@ var factForms = [...]struct {
 	{FactReaction, formText, "", []string{"acid-base", "precipitation", "redox", "non-aqueous"}},
 	{FactTemperature, formNumber, Temperature, nil},
 	{FactEndReading, formReading, "", nil},
+	{FactDensity, formNumber, Density, nil},
+	{FactCell, formNumber, CellConstant, nil},
 	{FactReadings, formCount, "", nil},
 	{FactRun, formText, "", nil},
 }
@@ -69,13 +73,24 @@ func AllowedTexts(name FactName) []string {
 	return nil
 }
 
-// fieldQuantity is the quantity of each role that has one; its order is that
-// of the documentation. RoleNumber, RoleRun and RoleUnused have none.
-var fieldQuantity = [...]struct {
-	role     Role
-	quantity Quantity
+// fieldForms has every role with the quantities that its unit may have; the
+// order is that of the documentation.
+var fieldForms = [...]struct {
+	role       Role
+	quantities []Quantity
 }{
-	{RoleVolume, Volume}, {RolePH, PH}, {RolePotential, Potential}, {RoleConductivity, Conductivity},
-	{RoleTime, Duration}, {RoleTemperature, Temperature},
-	{RoleNumber, ""}, {RoleRun, ""}, {RoleUnused, ""},
+	{RoleVolume, []Quantity{Volume, Mass}}, {RoleIncrement, []Quantity{Volume, Mass}},
+	{RolePH, []Quantity{PH}}, {RolePotential, []Quantity{Potential}},
+	{RoleConductivity, []Quantity{Conductivity}}, {RoleConductance, []Quantity{Conductance}},
+	{RoleTime, []Quantity{Duration}}, {RoleTemperature, []Quantity{Temperature}}, {RoleDrift, []Quantity{Drift}},
+	{RoleStatus, nil}, {RoleRemark, nil}, {RoleNumber, nil}, {RoleRun, nil}, {RoleUnused, nil},
+}
+
+func quantitiesOf(r Role) []Quantity {
+	for i := range fieldForms {
+		if fieldForms[i].role == r {
+			return fieldForms[i].quantities
+		}
+	}
+	return nil
 }

@@ -2,8 +2,10 @@ package schemas
 
 import (
 	"fmt"
+	"math"
 	"slices"
 	"sort"
+	"strconv"
 	"strings"
 	"time"
 )
@@ -154,6 +156,74 @@ func (n *node) flag(key string) bool {
 		n.problem(key, "found "+describe(v), "true or false is allowed")
 	}
 	return b
+}
+
+// day is a date without time, as TOML writes one or as text.
+func (n *node) day(key string) string {
+	n.asked = append(n.asked, key)
+	v, ok := n.table[key]
+	if !ok {
+		return ""
+	}
+	text, isText := v.(string)
+	if t, isTime := v.(time.Time); isTime {
+		text, isText = t.Format(time.DateOnly), t.Location().String() == "date-local"
+	}
+	if _, err := time.Parse(time.DateOnly, text); err != nil || !isText {
+		n.problem(key, "found "+describe(v), "a date such as 2031-04-02 is allowed")
+	}
+	return text
+}
+
+// rows is a list of row numbers, counted up from 1.
+func (n *node) rows(key string) []int {
+	n.asked = append(n.asked, key)
+	v, ok := n.table[key]
+	if !ok {
+		return nil
+	}
+	list, _ := v.([]any)
+	var rows []int
+	for _, one := range list {
+		row, _ := one.(int64)
+		if last := len(rows) - 1; row < 1 || row > maxHeaderRows || last < 0 && row != 1 || last >= 0 && int(row) <= rows[last] {
+			n.problem(key, "found "+describe(one)+" in the list", fmt.Sprintf("numbers from 1 up to %d are allowed, the first of them 1", maxHeaderRows))
+			return nil
+		}
+		rows = append(rows, int(row))
+	}
+	if rows == nil {
+		n.problem(key, "found "+describe(v), "a list of numbers is allowed, e.g. [1, 2]")
+	}
+	return rows
+}
+
+// maxHeaderRows is how many rows a header may have.
+const maxHeaderRows = 9
+
+// number is a number of a unit, in the project's unit; nil when it is absent.
+func (n *node) number(key string, u Unit) *float64 {
+	n.asked = append(n.asked, key)
+	v, ok := n.table[key]
+	if !ok {
+		return nil
+	}
+	var text string
+	switch v := v.(type) {
+	case int64:
+		text = strconv.FormatInt(v, 10)
+	case float64:
+		text = strconv.FormatFloat(v, 'e', -1, 64)
+	}
+	mantissa, exponent, _ := strings.Cut(text, "e")
+	e, _ := strconv.Atoi(exponent)
+	value, err := strconv.ParseFloat(fmt.Sprintf("%se%d", mantissa, e+u.Shift), 64)
+	if err != nil || math.IsInf(value, 0) || math.IsNaN(value) || text == "" {
+		n.problem(key, "found "+describe(v), "a number is allowed")
+		return nil
+	}
+	value = value*u.Times + u.Plus
+	return &value
 }
 
 // child returns the table of key; one without keys when it is absent.

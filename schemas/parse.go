@@ -9,6 +9,7 @@ import (
 	"fmt"
 	"slices"
 	"strings"
+	"unicode/utf8"
 
 	"github.com/BurntSushi/toml"
 )
@@ -38,6 +39,7 @@ func Parse(path string, src []byte) (*Schema, error) {
 	if err := file.err(); err != nil {
 		return nil, err
 	}
+	s.Indicated = numbered(s.Indicated)
 	return s, nil
 }
 
@@ -86,25 +88,24 @@ func (s *Schema) read(root *node) {
 	if root.has("name") && !isName(s.Name) {
 		root.problem("name", fmt.Sprintf("found %q", s.Name), "small letters, digits and hyphens are allowed, e.g. bench-a")
 	}
-	s.Layout = Layout(root.word("layout", string(Single), string(Stacked), string(Long)))
+	s.Layout = Layout(root.word("layout", string(Single), string(Stacked), string(Long), string(Wide)))
+	s.ValidFrom = root.day("valid_from")
 	s.Dialect.read(root.child("dialect"))
 	s.Recognise.read(root.child("recognise"))
 	s.Preamble.read(root.child("preamble"))
 	stack := root.child("stack")
-	s.Stack = Stack{Begin: stack.text("begin"), End: stack.text("end")}
+	s.Stack = Stack{Begin: stack.text("begin"), End: stack.text("end"), Blank: stack.flag("blank")}
 	stack.done()
-	footer := root.child("footer")
-	s.Footer = Footer{Begin: footer.text("begin"), Row: footer.text("row"), Titles: footer.titles("titles")}
-	footer.done()
-	for _, n := range root.children("fields") {
-		s.Fields = append(s.Fields, readField(n))
+	wide := root.child("wide")
+	s.Wide = wide.titles("titles")
+	wide.done()
+	s.Footer.read(root.child("footer"))
+	s.readLists(root)
+	s.SameVolume = SameVolume(root.word("sameVolume", "all", string(SameLast)))
+	if s.SameVolume == "all" {
+		s.SameVolume = SameAll
 	}
-	for _, n := range root.children("facts") {
-		s.Facts = append(s.Facts, readFact(n))
-	}
-	for _, n := range root.children("indicated") {
-		s.Indicated = append(s.Indicated, readIndicated(n))
-	}
+	s.RepeatedHeader = root.flag("repeatedHeader")
 	s.KeepUnterminated = root.flag("keepUnterminatedRow")
 	for _, key := range []string{"name", "layout", "recognise", "fields"} {
 		if !root.has(key) {
@@ -114,18 +115,44 @@ func (s *Schema) read(root *node) {
 	root.done()
 }
 
+// readLists takes the lists of columns, facts, endpoints and results.
+func (s *Schema) readLists(root *node) {
+	for _, n := range root.children("fields") {
+		s.Fields = append(s.Fields, readField(n))
+	}
+	for _, n := range root.children("facts") {
+		s.Facts = append(s.Facts, readFact(n))
+	}
+	for _, n := range root.children("indicated") {
+		s.Indicated = append(s.Indicated, readIndicated(n))
+	}
+	for _, n := range root.children("results") {
+		s.Results = append(s.Results, readResult(n))
+	}
+}
+
 func isName(s string) bool {
 	return s != "" && strings.Trim(s, "abcdefghijklmnopqrstuvwxyz0123456789-") == ""
 }
 
 func (d *Dialect) read(n *node) {
-	d.Encoding = Encoding(n.word("encoding", string(UTF8), string(UTF16), string(Windows1252), string(Latin1)))
+	d.Encoding = Encoding(n.word("encoding", string(UTF8), string(UTF16), string(UTF16LE), string(UTF16BE), string(Windows1252), string(Latin1), string(Auto)))
 	if d.Encoding == "" {
 		d.Encoding = UTF8 // [csvw] encoding: default
 	}
 	d.Delimiter = n.char("delimiter", ',')
 	d.QuoteChar = n.char("quoteChar", '"')
 	d.CommentChar = n.char("commentChar", 0)
+	d.EscapeChar = n.char("escapeChar", 0)
+	d.GroupChar = n.text("groupChar")
+	if d.GroupChar != "" && (utf8.RuneCountInString(d.GroupChar) != 1 || strings.ContainsAny(d.GroupChar, "0123456789+-eE\r\n")) {
+		n.problem("groupChar", fmt.Sprintf("found %q", d.GroupChar), "one character that no number has is allowed, for any blank \" \"")
+	}
+	d.HeaderRows, d.HeaderJoin = n.rows("headerRows"), " "
+	n.asked = append(n.asked, "headerJoin")
+	if n.has("headerJoin") {
+		d.HeaderJoin = n.text("headerJoin")
+	}
 	d.DecimalChar = '.' // [table] decimalChar: default
 	if w := n.word("decimalChar", ".", ","); w != "" {
 		d.DecimalChar = w[0]
@@ -138,12 +165,19 @@ func (d *Dialect) read(n *node) {
 }
 
 func (r *Recognise) read(n *node) {
-	r.FirstLine, r.Header = n.text("firstLine"), n.flag("header")
+	r.FirstLine, r.Begins, r.Header = n.text("firstLine"), n.text("firstLineBegins"), n.flag("header")
+	r.Lines, r.Absent = n.titles("lines"), n.titles("absent")
 	n.done()
 }
 
 func (p *Preamble) read(n *node) {
-	p.Lines = Lines(n.word("lines", string(CommentLines), string(CellLines)))
+	p.Lines = Lines(n.word("lines", string(CommentLines), string(CellLines), string(TextLines)))
 	p.Separator = n.char("separator", ':')
+	n.done()
+}
+
+func (f *Footer) read(n *node) {
+	f.Begin, f.Blank, f.Row, f.Titles = n.text("begin"), n.flag("blank"), n.text("row"), n.titles("titles")
+	f.Lines = Lines(n.word("lines", string(CommentLines), string(CellLines), string(TextLines), string(UnusedLines)))
 	n.done()
 }

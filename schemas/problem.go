@@ -16,6 +16,7 @@ type Problem struct {
 	Field string // the field or key concerned; "" when none
 	Msg   string // what was found
 	Hint  string // what was expected, or what to do; "" when nothing can be said
+	Next  string // the exact next command, "" when there is none; no part of Error
 }
 
 // Error renders path:line:column: run n: field: what was found; what to do.

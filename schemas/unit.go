@@ -13,6 +13,11 @@ const (
 	Duration      Quantity = "time"          // s
 	Temperature   Quantity = "temperature"   // °C
 	Concentration Quantity = "concentration" // mol/L
+	Mass          Quantity = "mass"          // g, of titrant
+	Density       Quantity = "density"       // g/mL
+	Conductance   Quantity = "conductance"   // mS
+	CellConstant  Quantity = "cell constant" // 1/cm
+	Drift         Quantity = "drift"         // unit of the readings a minute
 )
 
 // Unit is a unit of a dump and how it becomes the project's unit:
@@ -39,6 +44,11 @@ var units = [...]Unit{
 	{"S/m", Conductivity, 1, 1, 0}, {"mS/m", Conductivity, -2, 1, 0},
 	{"s", Duration, 0, 1, 0}, {"ms", Duration, -3, 1, 0}, {"min", Duration, 0, 60, 0}, {"h", Duration, 0, 3600, 0},
 	{"Cel", Temperature, 0, 1, 0}, {"K", Temperature, 0, 1, -273.15},
+	{"g", Mass, 0, 1, 0}, {"mg", Mass, -3, 1, 0}, {"kg", Mass, 3, 1, 0},
+	{"g/mL", Density, 0, 1, 0}, {"kg/L", Density, 0, 1, 0}, {"g/L", Density, -3, 1, 0}, {"kg/m3", Density, -3, 1, 0},
+	{"mS", Conductance, 0, 1, 0}, {"uS", Conductance, -3, 1, 0}, {"S", Conductance, 3, 1, 0},
+	{"/cm", CellConstant, 0, 1, 0}, {"/m", CellConstant, -2, 1, 0},
+	{"mV/min", Drift, 0, 1, 0}, {"mV/s", Drift, 0, 60, 0}, {"uV/s", Drift, -3, 60, 0}, {"[pH]/min", Drift, 0, 1, 0}, {"[pH]/s", Drift, 0, 60, 0},
 	{"mol/L", Concentration, 0, 1, 0}, {"mmol/L", Concentration, -3, 1, 0}, {"mol/m3", Concentration, -3, 1, 0},
 }
 

@@ -14,6 +14,7 @@ type clock struct {
 	fraction                               string // digits of a second
 	half                                   string // "am", "pm" or ""
 	offset                                 *time.Location
+	elapsed                                bool // no time of day; minutes may be many
 }
 
 var errNoDate = errors.New("is no date and time of this form")
@@ -115,6 +116,9 @@ func (c *clock) directive(s string, d byte) (rest string, err error) {
 	case 'H', 'I':
 		return digitsInto(&c.hour, s, 1, 2)
 	case 'M':
+		if c.elapsed {
+			return digitsInto(&c.minute, s, 1, 4)
+		}
 		return digitsInto(&c.minute, s, 2, 2)
 	case 'S':
 		return digitsInto(&c.second, s, 2, 2)
@@ -179,24 +183,39 @@ func (c *clock) readOffset(s string) (rest string, err error) {
 	return s, errNoDate
 }
 
+// wholeDay puts the hour of a 12 h clock on one of 24 h.
+func (c *clock) wholeDay() error {
+	if c.half == "" {
+		return nil
+	}
+	if c.hour < 1 || c.hour > 12 {
+		return fmt.Errorf("has the hour %d on a 12 h clock", c.hour)
+	}
+	c.hour %= 12
+	if c.half == "pm" {
+		c.hour += 12
+	}
+	return nil
+}
+
 // format checks that the time exists and writes it.
 func (c *clock) format() (string, error) {
-	if c.half != "" {
-		if c.hour < 1 || c.hour > 12 {
-			return "", fmt.Errorf("has the hour %d on a 12 h clock", c.hour)
-		}
-		c.hour %= 12
-		if c.half == "pm" {
-			c.hour += 12
-		}
+	if err := c.wholeDay(); err != nil {
+		return "", err
 	}
 	zone := c.offset
 	if zone == nil {
 		zone = time.UTC // stands for "no offset" below
 	}
 	t := time.Date(c.year, time.Month(c.month), c.day, c.hour, c.minute, c.second, 0, zone)
-	if t.Year() != c.year || int(t.Month()) != c.month || t.Day() != c.day || t.Hour() != c.hour || t.Minute() != c.minute || t.Second() != c.second {
+	if !c.shows(t) {
+		if c.shows(time.Date(c.year, time.Month(c.month), c.day, c.hour, c.minute, c.second, 0, time.UTC)) {
+			return "", fmt.Errorf("is a time that the clocks of %s left out", zone)
+		}
 		return "", errors.New("is a date or time that does not exist")
+	}
+	if c.doubled(t) {
+		return "", fmt.Errorf("is a time that the clocks of %s showed twice", zone)
 	}
 	text := t.Format("2006-01-02T15:04:05")
 	if c.fraction != "" {
@@ -206,4 +225,56 @@ func (c *clock) format() (string, error) {
 		text += t.Format("Z07:00")
 	}
 	return text, nil
+}
+
+// shows reports whether t has the date and time that were read.
+func (c *clock) shows(t time.Time) bool {
+	return t.Year() == c.year && int(t.Month()) == c.month && t.Day() == c.day && t.Hour() == c.hour && t.Minute() == c.minute && t.Second() == c.second
+}
+
+// doubled reports whether the clocks of the zone showed the time of t at
+// another moment too, as they do when they are put back.
+func (c *clock) doubled(t time.Time) bool {
+	start, end := t.ZoneBounds()
+	_, offset := t.Zone()
+	for _, near := range []time.Time{start.Add(-time.Second), end} {
+		if near.Unix() < -1<<40 || start.IsZero() && near.Before(t) || end.IsZero() && near.After(t) {
+			continue
+		}
+		_, other := near.Zone()
+		twin := t.Add(time.Duration(offset-other) * time.Second)
+		if !twin.Equal(t) && c.shows(twin) {
+			return true
+		}
+	}
+	return false
+}
+
+// ParseClock reads a time as a clock shows it and returns it in seconds: since
+// midnight, since the beginning of 1970 when the pattern has a date, or since
+// whatever a pattern without hour counts from.
+func ParseClock(s string, pattern schemas.Pattern) (seconds float64, err error) {
+	c := clock{elapsed: !pattern.Has("HI")}
+	if err = c.read(s, pattern.Text()); err != nil {
+		return 0, errors.New("is no time of this form")
+	}
+	if err = c.wholeDay(); err != nil {
+		return 0, err
+	}
+	if c.hour > 23 || c.minute > 59 && pattern.Has("HI") || c.second > 59 {
+		return 0, errors.New("is a time that does not exist")
+	}
+	seconds = float64(c.hour*3600 + c.minute*60 + c.second)
+	if pattern.Has("Yy") {
+		day := time.Date(c.year, time.Month(c.month), c.day, 0, 0, 0, 0, time.UTC)
+		if day.Year() != c.year || int(day.Month()) != c.month || day.Day() != c.day {
+			return 0, errors.New("is a date or time that does not exist")
+		}
+		seconds += float64(day.Unix())
+	}
+	if c.fraction != "" {
+		n, _ := ParseNumber([]byte("0."+c.fraction), '.', 0)
+		seconds += n.Value
+	}
+	return seconds, nil
 }

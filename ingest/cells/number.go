@@ -20,6 +20,7 @@ const (
 	NotNumber                   // no decimal number at all
 	OtherMark                   // it would be one with the other decimal mark
 	NumberUnbounded             // beyond a float64
+	NumberBound                 // a number with "<" or ">" before it
 )
 
 // maxNumberBytes is the longest text that is looked at as a number; no

@@ -12,6 +12,7 @@ type Cell struct {
 	From, To int
 	Quoted   bool
 	doubled  bool // has doubled quotes inside
+	escaped  bool // has escapes inside
 }
 
 // Empty reports whether nothing stands in the cell; "" in quotes is something.
@@ -57,6 +58,7 @@ func (r *Row) DropEmptyTail(n int) bool {
 type Scanner struct {
 	Body                      []byte
 	Delimiter, Quote, Comment byte
+	Escape                    byte // takes its meaning from the character behind it
 	pos, line                 int
 }
 
@@ -126,15 +128,19 @@ func (s *Scanner) scanCells(r *Row) {
 				return
 			}
 		} else {
-			from := i
+			from, escaped := i, false
 			for i < len(body) && body[i] != delimiter && body[i] != '\n' && body[i] != '\r' {
+				if body[i] == s.Escape && s.escapes(i) {
+					escaped = true
+					i++
+				}
 				i++
 			}
 			to := i
 			for to > from && s.isBlank(body[to-1]) {
 				to--
 			}
-			r.Cells = append(r.Cells, Cell{From: from, To: to})
+			r.Cells = append(r.Cells, Cell{From: from, To: to, escaped: escaped})
 		}
 		if i == len(body) || body[i] != delimiter {
 			s.endLine(r, i)
@@ -154,6 +160,11 @@ func (s *Scanner) quotedCell(r *Row, i int) int {
 		if j == len(body) || body[j] == '\n' || body[j] == '\r' {
 			r.Fault, r.FaultAt = "a quote that is not closed on its line", i
 			return j
+		}
+		if body[j] == s.Escape && s.escapes(j) {
+			c.escaped = true
+			j++
+			continue
 		}
 		if body[j] != s.Quote {
 			continue
@@ -181,11 +192,28 @@ func (s *Scanner) afterQuote(r *Row, j int) int {
 	return j
 }
 
+// escapes reports whether the escape character at i has a character of its
+// line behind it.
+func (s *Scanner) escapes(i int) bool {
+	return s.Escape != 0 && i+1 < len(s.Body) && s.Body[i+1] != '\n' && s.Body[i+1] != '\r'
+}
+
 // Bytes returns the content of a cell. It copies only when quotes are doubled
-// inside.
+// inside or characters escaped.
 func (s *Scanner) Bytes(c Cell) []byte {
-	if c.doubled {
-		return bytes.ReplaceAll(s.Body[c.From:c.To], []byte{s.Quote, s.Quote}, []byte{s.Quote})
+	b := s.Body[c.From:c.To]
+	if c.doubled && !c.escaped {
+		return bytes.ReplaceAll(b, []byte{s.Quote, s.Quote}, []byte{s.Quote})
 	}
-	return s.Body[c.From:c.To]
+	if !c.escaped {
+		return b
+	}
+	plain := make([]byte, 0, len(b))
+	for i := 0; i < len(b); i++ {
+		if i+1 < len(b) && (b[i] == s.Escape || c.doubled && b[i] == s.Quote && b[i+1] == s.Quote) {
+			i++
+		}
+		plain = append(plain, b[i])
+	}
+	return plain
 }

@@ -94,9 +94,13 @@ func TestBlankAndEmptyTail(t *testing.T) {
 // Every byte of the text but line ends belongs to exactly one row, cells lie
 // inside their row and in order.
 func FuzzScan(f *testing.F) {
-	f.Add([]byte("a,\"b\"\"\"\r\n#c\r,\n\"x"))
-	f.Fuzz(func(t *testing.T, body []byte) {
+	f.Add([]byte("a,\"b\"\"\"\r\n#c\r,\n\"x"), false)
+	f.Add([]byte("a\\,\"\\\"\"\\\n"), true)
+	f.Fuzz(func(t *testing.T, body []byte, escapes bool) {
 		s := Scanner{Body: body, Delimiter: ',', Quote: '"', Comment: '#'}
+		if escapes {
+			s.Escape = '\\'
+		}
 		var r Row
 		next := 0
 		for s.Next(&r) {

@@ -22,6 +22,10 @@ type Text struct {
 	mark     int // bytes of the byte order mark
 }
 
+// Encoding is the encoding that the bytes were read with, in which a byte order
+// mark counts for the order; the zero Text has none.
+func (t *Text) Encoding() schemas.Encoding { return t.encoding }
+
 // Fault is why bytes are not text of an encoding, or text no cells.
 type Fault struct {
 	Line, Col int
@@ -40,11 +44,23 @@ var (
 // Cut, because a dump that is cut off ends like that.
 func Decode(data []byte, encoding schemas.Encoding) (*Text, *Fault) {
 	lower, upper := bytes.HasPrefix(data, markLower), bytes.HasPrefix(data, markUpper)
-	if encoding == schemas.UTF16 {
+	switch encoding {
+	case schemas.Auto:
+		if encoding = schemas.UTF8; lower || upper {
+			encoding = schemas.UTF16
+		}
+		t, fault := Decode(data, encoding)
+		if fault != nil && encoding == schemas.UTF8 && bytes.IndexByte(data, 0) < 0 {
+			fault.Hint = "the dump is damaged or in an encoding that only the schema can state, such as windows-1252"
+		}
+		return t, fault
+	case schemas.UTF16:
 		if !lower && !upper {
 			return nil, &Fault{1, 1, "no UTF-16 byte order mark", "the schema states utf-16"}
 		}
-		return decodeUTF16(data, upper)
+		return decodeUTF16(data[2:], upper, 2)
+	case schemas.UTF16LE, schemas.UTF16BE:
+		return decodeOrdered(data, encoding)
 	}
 	if lower || upper {
 		return nil, &Fault{1, 1, "a UTF-16 byte order mark", fmt.Sprintf("the schema states %s", encoding)}
@@ -56,6 +72,24 @@ func Decode(data []byte, encoding schemas.Encoding) (*Text, *Fault) {
 		return decodeUTF8(data)
 	}
 	return decodeBytes(data, encoding)
+}
+
+// decodeOrdered decodes UTF-16 whose byte order the schema states.
+func decodeOrdered(data []byte, encoding schemas.Encoding) (*Text, *Fault) {
+	big := encoding == schemas.UTF16BE
+	own, other := markLower, markUpper
+	if big {
+		own, other = other, own
+	}
+	switch {
+	case bytes.HasPrefix(data, other):
+		return nil, &Fault{1, 1, "the byte order mark of the other byte order", fmt.Sprintf("the schema states %s", encoding)}
+	case bytes.HasPrefix(data, own):
+		return decodeUTF16(data[2:], big, 2)
+	case bytes.IndexByte(data, 0) < 0:
+		return nil, &Fault{1, 1, "no UTF-16", fmt.Sprintf("the schema states %s", encoding)}
+	}
+	return decodeUTF16(data, big, 0)
 }
 
 // placed gives a byte offset its line and column, for encodings in which a
@@ -102,13 +136,12 @@ func decodeUTF8(data []byte) (*Text, *Fault) {
 
 // decodeUTF16 refuses NUL and half surrogate pairs. An odd last byte or a
 // half pair at the very end is an incomplete last character.
-func decodeUTF16(data []byte, upper bool) (*Text, *Fault) {
+func decodeUTF16(units []byte, upper bool, mark int) (*Text, *Fault) {
 	high, low := 1, 0
 	if upper {
 		high, low = 0, 1
 	}
-	units := data[2:]
-	t := &Text{encoding: schemas.UTF16, mark: 2, Cut: len(units)%2 == 1, Body: make([]byte, 0, len(units)/2+len(units)/32)}
+	t := &Text{encoding: schemas.UTF16, mark: mark, Cut: len(units)%2 == 1, Body: make([]byte, 0, len(units)/2+len(units)/32)}
 	for ; len(units) >= 2; units = units[2:] {
 		r := rune(units[high])<<8 | rune(units[low])
 		switch {
@@ -157,6 +190,9 @@ func decodeBytes(data []byte, encoding schemas.Encoding) (*Text, *Fault) {
 	if utf8.Valid(data) {
 		return nil, placed(data, first, "the text is UTF-8", fmt.Sprintf("the schema states %s; another program may have saved the dump", encoding))
 	}
+	if at := mixedAt(data); at >= 0 {
+		return nil, placed(data, at, "a character of UTF-8 among others that are not", fmt.Sprintf("the schema states %s; two programs have written the dump", encoding))
+	}
 	t.Body = make([]byte, 0, len(data)+len(data)/32+16)
 	for at := 0; at < len(data); {
 		plain := nonASCII(data[at:])
@@ -172,6 +208,20 @@ func decodeBytes(data []byte, encoding schemas.Encoding) (*Text, *Fault) {
 		at++
 	}
 	return t, nil
+}
+
+// mixedAt returns the offset of a letter or sign that is written in UTF-8, -1
+// for none. Read as one byte a character it would begin with Â, Ã or â and a
+// sign behind it, which no text of a dump has.
+func mixedAt(data []byte) int {
+	for i, c := range data {
+		two := (c == 0xC2 || c == 0xC3) && i+1 < len(data) && data[i+1]&0xC0 == 0x80
+		three := c == 0xE2 && i+2 < len(data) && data[i+1]&0xC0 == 0x80 && data[i+2]&0xC0 == 0x80
+		if two || three {
+			return i
+		}
+	}
+	return -1
 }
 
 // nonASCII returns the offset of the first byte that is not ASCII.

@@ -1,0 +1,278 @@
+package ingest
+
+import (
+	"fmt"
+
+	"lastdrop/ingest/cells"
+	"lastdrop/ingest/match"
+	"lastdrop/schemas"
+)
+
+// wideTable is the layout wide while it is read: one table in which each run
+// has columns of its own, and perhaps shares some with the others.
+type wideTable struct {
+	*reader
+	head  *draft // preamble, header and rows, shared by all runs; no run itself
+	runs  []*wideRun
+	names []nameRow
+}
+
+// wideRun is one run of the layout wide.
+type wideRun struct {
+	*draft
+	from, to int   // its columns, the last one excluded
+	own      []int // those that it shares with nobody
+	ended    int   // line in which its columns are empty first; 0 while they are not
+}
+
+// nameRow is a row above the header that has a cell for each run.
+type nameRow struct {
+	title string
+	row   cells.Row
+}
+
+// maxWideRuns is how many runs one table may hold. No bench writes a tenth of
+// it; it bounds the work on damaged dumps.
+const maxWideRuns = 1000
+
+// wideRows reads the layout wide.
+func (r *reader) wideRows() {
+	r.passFirstLine()
+	w := &wideTable{reader: r}
+	w.head = r.begin(0)
+	w.head.wide = w
+	r.begun = 0
+	for r.scan.Next(&r.row) {
+		if w.head.columns == nil {
+			w.head.take()
+		} else {
+			w.tableRow()
+		}
+		if w.head.fault != nil {
+			break
+		}
+	}
+	w.close()
+}
+
+// close finishes every run, in the order of their columns.
+func (w *wideTable) close() {
+	if w.head.columns == nil {
+		w.head.line = w.row.Line
+		w.head.finish()
+	}
+	if w.head.fault != nil {
+		w.problems = append(w.problems, w.head.fault)
+		return
+	}
+	for _, run := range w.runs {
+		run.repairs.Join(&w.head.repairs)
+		run.statements = append(run.statements, w.head.statements...)
+		run.finish()
+		w.reader.close(run.draft)
+	}
+}
+
+// namesRuns takes the rows above the header that have a cell for each run,
+// when the row at hand is the first of them, and the header below them.
+func (d *draft) namesRuns() bool {
+	titles := d.schema.Wide
+	if d.wide == nil || len(titles) == 0 {
+		return false
+	}
+	ahead := d.scan
+	var next cells.Row
+	for range titles {
+		if !ahead.Next(&next) {
+			return false
+		}
+	}
+	if !match.FitOf(d.schema, &ahead, &next).Meant() {
+		return false
+	}
+	for _, title := range titles {
+		named := nameRow{title: title, row: d.row}
+		named.row.Cells = append([]cells.Cell(nil), d.row.Cells...)
+		d.wide.names = append(d.wide.names, named)
+		d.scan.Next(&d.row)
+	}
+	d.header()
+	return true
+}
+
+// bind binds the header and parts its columns into runs: a new one begins
+// where a role comes again.
+func (w *wideTable) bind() {
+	head := w.head
+	c := head.bindTitles()
+	shared := map[int]*schemas.Field{}
+	for i, text := range c.titles {
+		f := match.FieldOf(w.schema, text)
+		if f != nil && f.Shared {
+			shared[i] = f
+			continue
+		}
+		if f == nil && len(text) > 0 {
+			head.repairs.Add(w.row.Line, fmt.Sprintf("column %s not used", cells.Quoted(text)))
+		}
+		if f != nil && f.Role != schemas.RoleUnused {
+			w.bindColumn(i, f)
+		}
+	}
+	w.share(shared)
+	if len(w.runs) > maxWideRuns {
+		head.refuseRow(w.row.From, "", fmt.Sprintf("%d runs in one table", len(w.runs)), fmt.Sprintf("at most %d are read", maxWideRuns))
+	}
+	if len(w.runs) == 0 {
+		head.needColumns(c)
+	}
+	w.named()
+	head.passHeader()
+}
+
+// bindColumn gives a column to the run at hand or to the next one.
+func (w *wideTable) bindColumn(i int, f *schemas.Field) {
+	var run *wideRun
+	if n := len(w.runs); n > 0 && *w.runs[n-1].columns.slot(f.Role) < 0 {
+		run = w.runs[n-1]
+	} else {
+		run = &wideRun{draft: w.begin(w.row.Line), from: i}
+		head := w.head.columns
+		run.columns = newColumns(head.titles, &w.row, w.text.Body, head.rows)
+		run.table = &table{}
+		run.lastLine = w.row.Line
+		w.runs = append(w.runs, run)
+	}
+	*run.columns.slot(f.Role) = i
+	run.columns.take(i, f)
+	run.own = append(run.own, i)
+	run.to = i + 1
+}
+
+// share gives the shared columns to every run, and finds out what each lacks.
+func (w *wideTable) share(shared map[int]*schemas.Field) {
+	for n, run := range w.runs {
+		for i := range run.columns.titles { // in the order of the dump
+			f := shared[i]
+			if f == nil || f.Role == schemas.RoleUnused {
+				continue
+			}
+			if slot := run.columns.slot(f.Role); *slot < 0 {
+				*slot = i
+				run.columns.take(i, f)
+			}
+		}
+		if n+1 < len(w.runs) {
+			run.to = w.runs[n+1].from
+		} else {
+			run.to = len(run.columns.titles)
+		}
+		run.columns.bound()
+		run.needColumns(run.columns)
+		if run.fault == nil && len(w.runs) <= maxWideRuns {
+			run.table.readings = make([]Reading, 0, min(w.linesFrom(w.row.To), 1000))
+		}
+	}
+}
+
+// named takes the cells of the rows above the header into their runs. A row
+// that is not as wide as the header would give its names to other runs.
+func (w *wideTable) named() {
+	width := len(w.head.columns.titles)
+	for i := range w.names {
+		row := &w.names[i].row
+		if row.DropEmptyTail(width) {
+			w.head.repairs.Add(row.Line, trailingDropped)
+		}
+		if row.Fault != "" {
+			w.head.refuse(row.Line, row.From, row.FaultAt, "", row.Fault, "the line is damaged; export the dump again")
+			return
+		}
+		if n := len(row.Cells); n != width {
+			w.head.refuse(row.Line, row.From, row.To, "", fmt.Sprintf("%s above a header of %d", plural(n, "cell"), width), "the line is damaged; export the dump again")
+			return
+		}
+		for _, run := range w.runs {
+			run.named(&w.names[i])
+		}
+	}
+}
+
+// named takes the one cell above the run's columns.
+func (d *wideRun) named(name *nameRow) {
+	row := &name.row
+	var found *cells.Cell
+	for at := d.from; at < d.to; at++ {
+		c := &row.Cells[at]
+		switch {
+		case c.Empty():
+		case found == nil:
+			found = c
+		default:
+			d.refuse(row.Line, row.From, c.From, "", fmt.Sprintf("%s beside %s above one run", cells.Quoted(d.scan.Bytes(*c)), cells.Quoted(d.scan.Bytes(*found))), "one cell may name a run; the line is damaged: export the dump again")
+		}
+	}
+	if found != nil {
+		d.strayQuote(row.Line, *found)
+		d.addStatement(statement{key: []byte(name.title), value: d.scan.Bytes(*found), line: row.Line, start: row.From, at: found.From})
+	}
+}
+
+// tableRow reads one row into every run that has not ended.
+func (w *wideTable) tableRow() {
+	head, row := w.head, &w.row
+	switch {
+	case row.Comment:
+		head.comment()
+		return
+	case row.Blank():
+		head.blanks = append(head.blanks, row.Line)
+		return
+	case head.unterminated():
+		head.repairs.Add(row.Line, "last row without line end dropped")
+		return
+	case head.headerAgain():
+		return
+	case !row.Ended:
+		head.repairs.Add(row.Line, "last row without line end kept")
+	}
+	if head.skippedBlanks(); !head.shape(head.columns.width) {
+		w.damaged(head.fault)
+		head.fault = nil
+		return
+	}
+	for _, run := range w.runs {
+		run.wideRow()
+	}
+}
+
+// damaged refuses every run for a row that cannot be cut into their columns.
+func (w *wideTable) damaged(fault *schemas.Problem) {
+	for _, run := range w.runs {
+		if run.fault != nil {
+			run.more++
+			continue
+		}
+		p := *fault
+		run.fault = &p
+	}
+}
+
+// wideRow reads the run's part of the row at hand.
+func (d *wideRun) wideRow() {
+	empty := true
+	for _, i := range d.own {
+		empty = empty && d.missing(d.scan.Bytes(d.row.Cells[i]))
+	}
+	switch {
+	case empty && d.ended == 0:
+		d.ended = d.row.Line
+	case empty:
+	case d.ended > 0:
+		d.refuseRow(d.row.Cells[d.own[0]].From, "", fmt.Sprintf("the run goes on below line %d, where its columns are empty", d.ended), "a row is damaged; export the dump again")
+	case d.columns.volume >= 0 && d.columns.reading >= 0:
+		d.rows++
+		d.lastLine = d.row.Line
+		d.measure()
+	}
+}
