@@ -60,7 +60,7 @@ func noFitHint(o Options) string {
 }
 
 func unreadOf(p *schemas.Problem, s *schemas.Schema) report.Unread {
-	u := report.Unread{Run: p.Run, Line: p.Line, Column: p.Col, Field: p.Field, Says: p.Msg, Hint: p.Hint}
+	u := report.Unread{Run: p.Run, Line: p.Line, Column: p.Col, Field: p.Field, Says: p.Msg, Hint: p.Hint, Next: p.Next}
 	if s != nil {
 		u.Schema = s.Name
 	}
