@@ -52,7 +52,7 @@ func TestFoldersWithNamesOfTheLibrary(t *testing.T) {
 }
 
 func TestHelpFitsATerminal(t *testing.T) {
-	for _, about := range []string{"", "sweep", "look", "demo"} {
+	for _, about := range []string{"", "sweep", "look", "demo", "schema", "schema list", "schema show", "schema try", "schema draft"} {
 		r := try(t, strings.Fields("help "+about), nil)
 		for _, line := range strings.Split(r.stdout, "\n") {
 			if n := len([]rune(line)); n > helpWidth {

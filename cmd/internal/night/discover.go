@@ -62,7 +62,7 @@ func (f *findings) sort(in folder, p string, d fs.DirEntry) error {
 			return fs.SkipDir
 		}
 	case d.IsDir():
-	case d.Type().IsRegular() && isDump(p):
+	case d.Type().IsRegular() && IsDump(p):
 		f.dumps = append(f.dumps, dump{name: name, files: in.files, path: p})
 	default:
 		f.others++
@@ -75,13 +75,18 @@ func (f *findings) sort(in folder, p string, d fs.DirEntry) error {
 	return nil
 }
 
-func isDump(p string) bool {
+// IsDump reports whether a file or a member of an archive is a dump by its
+// name.
+func IsDump(p string) bool {
 	switch strings.ToLower(path.Ext(p)) {
 	case ".csv", ".txt", ".tsv", ".dat":
 		return true
 	}
 	return false
 }
+
+// MemberName is the name of an archive's member with plain slashes.
+func MemberName(name string) string { return path.Clean(strings.ReplaceAll(name, `\`, "/")) }
 
 func isArchive(p string) bool {
 	switch strings.ToLower(path.Ext(p)) {
