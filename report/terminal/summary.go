@@ -24,6 +24,7 @@ func Summary(w io.Writer, n *report.Night, files []string) error {
 	p.urgent(n)
 	p.unreadShort(n)
 	p.waiting(n)
+	p.passed(n)
 	p.files(files)
 	p.blank()
 	p.sentence(plain, "", report.Caution)

@@ -11,7 +11,7 @@ var unreadColumns = []column{
 
 func layUnread(b *book, p *places) error {
 	unread := p.night.Unread
-	s := b.open(layout{name: unreadSheet, columns: unreadColumns, table: true, frozen: 2, pagesWide: 2, rows: len(unread), tab: second}, p.footer)
+	s := b.open(layout{name: unreadSheet, columns: unreadColumns, table: true, frozen: 2, pagesWide: 2, rows: len(unread) + passedRows(p.night), tab: second}, p.footer)
 	for i := range unread {
 		u := &unread[i]
 		s.put(0, cell{unreadMark + " " + u.State, plain()}, wrapped(u.Dump), countIf(u.Run), countIf(u.Line), countIf(u.Column), text(u.Field),
@@ -20,6 +20,7 @@ func layUnread(b *book, p *places) error {
 	if len(unread) == 0 {
 		s.put(0, text("Every dump was read."))
 	}
+	layPassed(s, p.night)
 	return s.finish()
 }
 
