@@ -3,14 +3,8 @@ package schemaview
 import (
 	"io"
 
+	"lastdrop/report"
 	"lastdrop/schemas"
-)
-
-// Where a schema comes from, as every list and report says it.
-const (
-	Shipped    = "shipped"
-	Laboratory = "laboratory"
-	Replaces   = "replaces shipped"
 )
 
 // Origins says of each schema of a set, by its SHA-256, where it comes from.
@@ -23,11 +17,11 @@ func Origins(set []*schemas.Schema) map[string]string {
 	for _, s := range set {
 		switch {
 		case s.Replaces:
-			from[s.SHA256] = Replaces
+			from[s.SHA256] = report.ReplacesShipped
 		case shipped[s.SHA256]:
-			from[s.SHA256] = Shipped
+			from[s.SHA256] = report.Shipped
 		default:
-			from[s.SHA256] = Laboratory
+			from[s.SHA256] = report.Laboratory
 		}
 	}
 	return from

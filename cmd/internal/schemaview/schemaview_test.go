@@ -7,6 +7,7 @@ import (
 	"unicode/utf8"
 
 	"lastdrop/ingest"
+	"lastdrop/report"
 	"lastdrop/schemas"
 )
 
@@ -45,7 +46,7 @@ func TestPagesFitAndAreHarmless(t *testing.T) {
 	e := ingest.Explain([]byte(dump), strings.Repeat("far/", 30)+"dump.csv", s)
 	for name, write := range map[string]func(*strings.Builder) error{
 		"list": func(b *strings.Builder) error { return List(b, append(schemas.Shipped(), s)) },
-		"show": func(b *strings.Builder) error { return Show(b, s, Laboratory) },
+		"show": func(b *strings.Builder) error { return Show(b, s, report.Laboratory) },
 		"try":  func(b *strings.Builder) error { return Try(b, &e, false) },
 	} {
 		var b strings.Builder
