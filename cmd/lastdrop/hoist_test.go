@@ -45,7 +45,7 @@ func TestHoistRefuses(t *testing.T) {
 func TestFoldersWithNamesOfTheLibrary(t *testing.T) {
 	for _, name := range []string{"help", "h", "into", "quiet", "sweep"} {
 		r := try(t, []string{"sweep", name, "--into", t.TempDir()}, nil)
-		if want := "lastdrop: " + name + ": there is no such folder\n"; r.exit != 1 || !strings.HasPrefix(r.stderr, want) {
+		if want := "lastdrop: " + name + ": there is no such folder or file\n"; r.exit != 1 || !strings.HasPrefix(r.stderr, want) {
 			t.Errorf("%s: got exit %d, %s", name, r.exit, r.stderr)
 		}
 	}

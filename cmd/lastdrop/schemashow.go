@@ -11,7 +11,7 @@ import (
 func (p *program) schemaShowCommand() *command {
 	return &command{
 		name: "schema show", use: "NAME",
-		says:    "say in words what a schema expects of a dump and takes from it",
+		says:    "say in words what a schema expects of a dump",
 		more:    "Of a schema with several versions every one is shown. Exit: 0 done; 1 DIR cannot be read; 2 usage, also a NAME that is not there.",
 		example: []string{"lastdrop schema show plain", "lastdrop schema show bench-d --schemas /srv/schemas"},
 		options: []option{schemasOption()},
