@@ -20,7 +20,7 @@ func (p *program) schemaTryCommand() *command {
 		example: []string{"lastdrop schema try plain 0417.csv", "lastdrop schema try bench-d.toml bench-d/0402.dat"},
 		options: []option{
 			schemasOption(),
-			{flag: &cli.BoolFlag{Name: "all"}, says: "every run in full", without: "the first 3"},
+			{flag: &cli.BoolFlag{Name: "all"}, says: "every run and every repair", without: "the first 3 and 8"},
 		},
 		action: p.schemaTry,
 	}

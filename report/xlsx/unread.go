@@ -17,7 +17,7 @@ func layUnread(b *book, p *places) error {
 		s.put(0, cell{unreadMark + " " + u.State, plain()}, wrapped(u.Dump), countIf(u.Run), countIf(u.Line), countIf(u.Column), text(u.Field),
 			wrapped(u.Says), wrapped(u.Hint), wrapped(u.Next), text(u.Schema), text(u.DumpSHA256))
 	}
-	if len(unread) == 0 {
+	if len(unread)+passedRows(p.night) == 0 {
 		s.put(0, text("Every dump was read."))
 	}
 	layPassed(s, p.night)

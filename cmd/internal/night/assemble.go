@@ -1,6 +1,7 @@
 package night
 
 import (
+	"maps"
 	"slices"
 	"sort"
 	"strings"
@@ -17,11 +18,13 @@ func assemble(found *findings, all *yield, o Options) *report.Night {
 		Evaluations: join(outcomes), Limits: o.Limits, OtherFiles: found.others + all.others,
 		Excluded: found.excluded + all.excluded, Links: found.links, Specials: found.specials,
 	}
-	names := make([]string, len(outcomes))
+	dumps := map[string]string{}
 	for i := range outcomes {
-		names[i] = outcomes[i].dump.name
+		if !outcomes[i].dump.named { // who picks files leaves others out
+			dumps[outcomes[i].dump.name] = outcomes[i].sha
+		}
 	}
-	n.Gaps = gaps(names, slices.Concat(names, found.names, all.names))
+	n.Gaps = gaps(dumps, slices.Sorted(maps.Keys(named(dumps, found.names, all.names))))
 	for i := range outcomes {
 		out := &outcomes[i]
 		n.Unread = append(n.Unread, out.unread...)
@@ -37,6 +40,20 @@ func assemble(found *findings, all *yield, o Options) *report.Night {
 	n.Schemas = schemasUsed(n.Evaluations, o.Origins)
 	n.Invented = invented(n.Schemas)
 	return n
+}
+
+// named are all names that were met, each once.
+func named(dumps map[string]string, others ...[]string) map[string]bool {
+	all := map[string]bool{}
+	for name := range dumps {
+		all[name] = true
+	}
+	for _, names := range others {
+		for _, name := range names {
+			all[name] = true
+		}
+	}
+	return all
 }
 
 // stamp fills what belongs to the publication. Without a ledger every run is

@@ -18,6 +18,7 @@ type dump struct {
 	files   fs.FS
 	path    string // in files
 	archive bool
+	named   bool // by the user, one by one
 }
 
 // findings are what the folders hold.

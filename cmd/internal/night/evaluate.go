@@ -17,6 +17,7 @@ import (
 // wait.
 type outcome struct {
 	dump        dump
+	sha         string // of its bytes; "" when they were not read
 	evaluations []report.Evaluation
 	readings    []digest // of each evaluation
 	unread      []report.Unread
@@ -95,6 +96,7 @@ func evaluateOne(d dump, o Options) outcome {
 // refit fills the outcome from the bytes of its dump.
 func (out *outcome) refit(data []byte, o Options) {
 	sha := sha(data)
+	out.sha = sha
 	evaluations, unread := safely(o.Refit, data, out.dump.name, sha)
 	if len(evaluations)+len(unread) == 0 {
 		unread = []report.Unread{{Says: "holds no run", Hint: "check that it is the export of a titration"}}

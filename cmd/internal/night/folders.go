@@ -87,7 +87,7 @@ func (f *folders) openFile(path, into string) error {
 	if err != nil {
 		return unreadable(path, err)
 	}
-	in.only = append(in.only, dump{name: in.name + "/" + filepath.Base(path), files: root.FS(), path: filepath.Base(at), archive: archive.Is(path)})
+	in.only = append(in.only, dump{name: in.name + "/" + filepath.Base(path), files: root.FS(), path: filepath.Base(at), archive: archive.Is(path), named: true})
 	return nil
 }
 

@@ -1,7 +1,9 @@
 package night
 
 import (
+	"cmp"
 	"fmt"
+	"maps"
 	"path"
 	"slices"
 	"sort"
@@ -11,7 +13,7 @@ import (
 	"lastdrop/report"
 )
 
-// A gap is a run number that no file bears. It is told only where the numbers
+// A gap is a run number that no file bears, told by file names alone. It is told only where the numbers
 // of a folder plainly count runs: at least gapsFrom dumps, of gapDigits digits
 // or more, no days, and at most one number in gapsOneIn missing. Source: this
 // project; a sequence with larger holes counts something else as well.
@@ -31,28 +33,50 @@ type numbered struct {
 	day    bool // it may be a day
 }
 
-// gaps lists the numbers that are missing between the dumps. present are all
-// names that were met, of other files too: a number that any file bears is
-// not missing.
-func gaps(dumps, present []string) (found []report.Gap) {
-	counted, there := map[series][]numbered{}, map[series]map[uint64]bool{}
+// counter is all that is known of one series: its numbers, each with the
+// SHA-256 of the dump that bears it, "" where a file is no dump or was not read.
+type counter map[uint64]string
+
+// gaps lists the numbers that are missing between the dumps, which are given
+// with their SHA-256. present are all names that were met, of other files too:
+// a number that any file bears is not missing.
+func gaps(dumps map[string]string, present []string) (found []report.Gap) {
+	counted, there := map[series][]numbered{}, map[series]counter{}
 	for _, name := range present {
-		if s, n, ok := numberOf(name); ok {
-			if there[s] == nil {
-				there[s] = map[uint64]bool{}
-			}
-			there[s][n.number] = true
+		s, n, ok := numberOf(name)
+		if !ok {
+			continue
 		}
-	}
-	for _, name := range dumps {
-		if s, n, ok := numberOf(name); ok {
+		if there[s] == nil {
+			there[s] = counter{}
+		}
+		sha, isDump := dumps[name]
+		if there[s][n.number] == "" {
+			there[s][n.number] = sha
+		}
+		if isDump {
 			counted[s] = append(counted[s], n)
 		}
 	}
-	for s, numbers := range counted {
-		found = append(found, s.gaps(numbers, s.shared(there))...)
+	all := slices.SortedFunc(maps.Keys(counted), func(a, b series) int {
+		return cmp.Or(strings.Compare(a.folder, b.folder), strings.Compare(a.prefix, b.prefix), strings.Compare(a.width, b.width))
+	})
+	told := map[series][]report.Gap{}
+	for i, s := range all {
+		if len(counted[s]) < gapsFrom {
+			continue
+		}
+		for _, g := range s.gaps(counted[s], s.shared(there)) {
+			twin := slices.ContainsFunc(all[:i], func(before series) bool {
+				return before.counts(s, there) && slices.ContainsFunc(told[before], func(o report.Gap) bool { return path.Base(o.Name) == path.Base(g.Name) })
+			})
+			if !twin {
+				found = append(found, g)
+			}
+			told[s] = append(told[s], g)
+		}
 	}
-	sort.Slice(found, func(i, j int) bool { return found[i].Name < found[j].Name })
+	sort.SliceStable(found, func(i, j int) bool { return found[i].Name < found[j].Name })
 	return found
 }
 
@@ -94,16 +118,27 @@ func isYear(prefix string) bool {
 	return len(before) >= 4 && strings.Trim(before[len(before)-4:], "0123456789") == ""
 }
 
-// shared are the numbers of the series, with those of every folder whose
-// numbers have none in common with it: files that were moved, or benches that
-// count together.
-func (s series) shared(there map[series]map[uint64]bool) map[uint64]bool {
-	all := map[uint64]bool{}
-	for n := range there[s] {
-		all[n] = true
+// counts reports whether two folders may count together: benches with one
+// counter, or copies of one folder. They do not when one number is of
+// different dumps.
+func (s series) counts(other series, there map[series]counter) bool {
+	if other.prefix != s.prefix || other.width != s.width {
+		return false
 	}
+	for n, sha := range there[s] {
+		if theirs := there[other][n]; sha != "" && theirs != "" && sha != theirs {
+			return false
+		}
+	}
+	return true
+}
+
+// shared are the numbers of the series and of every one that may count
+// together with it: files are moved, copied and packed.
+func (s series) shared(there map[series]counter) map[uint64]bool {
+	all := map[uint64]bool{}
 	for other, numbers := range there {
-		if other == s || other.prefix != s.prefix || other.width != s.width || overlap(numbers, there[s]) {
+		if !s.counts(other, there) {
 			continue
 		}
 		for n := range numbers {
@@ -111,15 +146,6 @@ func (s series) shared(there map[series]map[uint64]bool) map[uint64]bool {
 		}
 	}
 	return all
-}
-
-func overlap(a, b map[uint64]bool) bool {
-	for n := range a {
-		if b[n] {
-			return true
-		}
-	}
-	return false
 }
 
 // gaps returns the gaps of one series, none when it does not plainly count
@@ -135,7 +161,7 @@ func (s series) gaps(numbers []numbered, there map[uint64]bool) (found []report.
 		return nil
 	}
 	first, last := numbers[0].number, numbers[len(numbers)-1].number
-	if len(numbers) < gapsFrom || last-first >= gapsOneIn*uint64(len(there)) {
+	if last-first >= gapsOneIn*uint64(len(there)) {
 		return nil
 	}
 	span, missing := last-first+1, uint64(0)

@@ -2,6 +2,7 @@ package night
 
 import (
 	"fmt"
+	"slices"
 	"strings"
 	"testing"
 )
@@ -21,8 +22,15 @@ next:
 }
 
 func gapsOf(dumps, others []string) string {
+	shas := map[string]string{}
+	for _, name := range dumps {
+		shas[name] = name // every dump is another one
+		if strings.Contains(name, "copy") {
+			shas[name] = strings.Replace(name, "copy", "a", 1)
+		}
+	}
 	var said []string
-	for _, g := range gaps(dumps, append(append([]string{}, dumps...), others...)) {
+	for _, g := range gaps(shas, slices.Concat(dumps, others)) {
 		said = append(said, fmt.Sprintf("%s (%d, between %s and %s)", g.Name, g.Count, g.After, g.Before))
 	}
 	return strings.Join(said, "\n")
@@ -49,6 +57,8 @@ func TestGaps(t *testing.T) {
 		{"moved to another folder", count17("d/a", 409), []string{"d/incoming/0409.csv"}, ""},
 		{"moved into an archive", count17("d/a", 409), []string{"d/old.zip/0409.csv"}, ""},
 		{"another bench with numbers of its own", append(count17("d/a", 409), count17("d/b")...), nil, "d/a/0409 (1, between 0408.csv and 0410.csv)"},
+		{"a folder and its copy", append(count17("d/a", 409), count17("d/copy", 409)...), nil, "d/a/0409 (1, between 0408.csv and 0410.csv)"},
+		{"a copy that has it", append(count17("d/a", 409), count17("d/copy")...), nil, ""},
 		{"two benches that count together", append(count17("d/a", 409, 412), "d/b/0409.csv", "d/b/0412.csv"), nil, ""},
 		{"five names, one in six missing", []string{"a/001.csv", "a/002.csv", "a/003.csv", "a/005.csv", "a/006.csv"}, nil, "a/004 (1, between 003.csv and 005.csv)"},
 		{"four names", []string{"a/001.csv", "a/002.csv", "a/003.csv", "a/005.csv"}, nil, ""},

@@ -30,6 +30,20 @@ func TestSingleFiles(t *testing.T) {
 	equal(t, "other files", r.Night.OtherFiles, 0)
 }
 
+// Who names files leaves others out, and means it.
+func TestNamedFilesHaveNoGaps(t *testing.T) {
+	b := newBench(t, map[string]string{"0001.csv": aRunOf(1), "0002.csv": aRunOf(2), "0004.csv": aRunOf(4), "0005.csv": aRunOf(5), "0006.csv": aRunOf(6)})
+	equal(t, "gaps of the folder", len(b.sweep().Night.Gaps), 1)
+	var files []string
+	for _, n := range []string{"1", "2", "4", "5", "6"} {
+		files = append(files, b.path("dumps/000"+n+".csv"))
+	}
+	b.opts.Folders = files
+	r := b.sweep()
+	equal(t, "runs", len(r.Night.Evaluations), 5)
+	equal(t, "gaps of the files", len(r.Night.Gaps), 0)
+}
+
 // What the user names is followed; what lies in a folder is not.
 func TestAFileByALink(t *testing.T) {
 	b := newBench(t, map[string]string{"1.csv": aRunOf(1)})

@@ -13,6 +13,10 @@ import (
 // looks at the first ones.
 const runsShown = 3
 
+// repairsShown is how many repairs of a run are told: a schema that does not fit
+// has one for every line.
+const repairsShown = 8
+
 // Try writes what a schema makes of a dump: columns, first and last rows,
 // facts, indicated endpoints, repairs. all is true for every run in full. The
 // problems are not in it: they are errors.
@@ -42,12 +46,12 @@ func Try(w io.Writer, e *ingest.Explanation, all bool) error {
 			p.heading(fmt.Sprintf("And %d more; --all shows every run.", len(e.Runs)-i))
 			break
 		}
-		p.run(&e.Runs[i])
+		p.run(&e.Runs[i], all)
 	}
 	return p.writeTo(w)
 }
 
-func (p *page) run(one *ingest.Explained) {
+func (p *page) run(one *ingest.Explained, all bool) {
 	r := &one.Run
 	head := fmt.Sprintf("RUN %d, line %d: not read", r.Number, r.Line)
 	if one.Read {
@@ -58,6 +62,10 @@ func (p *page) run(one *ingest.Explained) {
 	p.rows(one)
 	p.stated(r)
 	for i, repair := range r.Repairs {
+		if i >= repairsShown && !all {
+			p.row("", fmt.Sprintf("and %d more; --all shows every one", len(r.Repairs)-i))
+			break
+		}
 		p.row(first(i, "repairs"), repair)
 	}
 }
