@@ -13,6 +13,7 @@ import (
 	"lastdrop/cmd/internal/night"
 	"lastdrop/cmd/internal/refit"
 	"lastdrop/report"
+	"lastdrop/schemas"
 )
 
 // sweptNight is a demonstration night with what a sweep made of it.
@@ -33,7 +34,7 @@ func sweepDemonstration(t *testing.T, seed uint64) sweptNight {
 	}
 	result, err := night.Sweep(t.Context(), night.Options{
 		Folders: []string{filepath.Join(dir, "dumps")}, Into: filepath.Join(dir, "out"), Date: "2031-04-03",
-		Now: func() time.Time { return moment }, Lastdrop: version, Limits: refit.Limits(), Refit: evaluator(""),
+		Now: func() time.Time { return moment }, Lastdrop: version, Limits: refit.Limits(), Refit: evaluator("", schemas.Shipped()),
 		Log: slog.New(slog.DiscardHandler),
 	})
 	if err != nil {

@@ -38,6 +38,9 @@ func exitCode(err error) int {
 	if _, ok := errors.AsType[*usageError](err); ok {
 		return exitUsage
 	}
+	if f, ok := errors.AsType[*faults](err); ok {
+		return f.code
+	}
 	if _, ok := errors.AsType[*foundError](err); ok {
 		return exitFound
 	}

@@ -45,14 +45,14 @@ func TestHoistRefuses(t *testing.T) {
 func TestFoldersWithNamesOfTheLibrary(t *testing.T) {
 	for _, name := range []string{"help", "h", "into", "quiet", "sweep"} {
 		r := try(t, []string{"sweep", name, "--into", t.TempDir()}, nil)
-		if want := "lastdrop: " + name + ": there is no such folder\n"; r.exit != 1 || !strings.HasPrefix(r.stderr, want) {
+		if want := "lastdrop: " + name + ": there is no such folder or file\n"; r.exit != 1 || !strings.HasPrefix(r.stderr, want) {
 			t.Errorf("%s: got exit %d, %s", name, r.exit, r.stderr)
 		}
 	}
 }
 
 func TestHelpFitsATerminal(t *testing.T) {
-	for _, about := range []string{"", "sweep", "look", "demo"} {
+	for _, about := range []string{"", "sweep", "look", "demo", "schema", "schema list", "schema show", "schema try", "schema draft"} {
 		r := try(t, strings.Fields("help "+about), nil)
 		for _, line := range strings.Split(r.stdout, "\n") {
 			if n := len([]rune(line)); n > helpWidth {

@@ -30,6 +30,10 @@ type sweepCounts struct {
 	Unread     int `json:"unread"` // dumps, or runs in them
 	Waiting    int `json:"waiting"`
 	OtherFiles int `json:"other_files"`
+	Links      int `json:"links"`    // not followed
+	Specials   int `json:"specials"` // pipes, sockets, devices
+	LeftOut    int `json:"left_out"` // dumps, by --include and --exclude
+	Gaps       int `json:"gaps"`     // places where run numbers are missing
 }
 
 // printJSON prints the one object and hands the error on: stderr and the exit
@@ -46,6 +50,7 @@ func (p *program) printJSON(r *request, result *night.Result, err error) error {
 			Dumps: result.Dumps, Runs: len(n.Evaluations), Disputed: n.Count(report.VerdictDisputed),
 			Doubtful: n.Count(report.VerdictDoubtful), Sound: n.Count(report.VerdictSound),
 			Unread: len(n.Unread), Waiting: len(n.Waiting), OtherFiles: n.OtherFiles,
+			Links: len(n.Links), Specials: len(n.Specials), LeftOut: n.Excluded, Gaps: len(n.Gaps),
 		}
 	}
 	to := json.NewEncoder(p.stdout)

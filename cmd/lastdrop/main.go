@@ -4,6 +4,7 @@
 //
 //	sweep.go   the night: folders of dumps become one published night
 //	look.go    one dump on the terminal
+//	schema.go  the mappings of instruments; schemalist.go and so on, its parts
 //	demo.go    the demonstration laboratory
 //	exit.go    the exit codes, all of them
 //

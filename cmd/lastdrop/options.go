@@ -21,14 +21,18 @@ func (o option) name() string { return o.flag.Names()[0] }
 
 // command is one command of the program.
 type command struct {
-	name    string
+	name    string // "schema list" for a part of schema
 	use     string // what stands behind the name
 	says    string // one line
 	more    string // a paragraph for its own help
 	example []string
 	options []option
 	action  func(*cli.Context) error
+	parts   []*command // its own commands; it has no action then
 }
+
+// word is the last word of the name.
+func (c *command) word() string { return c.name[strings.LastIndexByte(c.name, ' ')+1:] }
 
 // helpOption is what every command has beside its own options.
 func helpOption() option {
@@ -99,6 +103,10 @@ const helpWidth, helpIndent = 80, 24
 func (c *command) help() string {
 	var b strings.Builder
 	fmt.Fprintf(&b, "lastdrop %s: %s\n\n  lastdrop %s %s\n\n%s\n", c.name, c.says, c.name, c.use, wrap(c.more, helpWidth, 0))
+	if len(c.parts) > 0 {
+		b.WriteString("\n" + parts(c.parts) + "\n  lastdrop " + c.name + " COMMAND --help   options and examples of one\n")
+		return b.String()
+	}
 	b.WriteString("\nOptions, before or behind paths; -- ends them:\n")
 	for _, o := range append(c.options, helpOption()) {
 		b.WriteString(o.help())

@@ -36,3 +36,12 @@ func outputs(o pdf.Options, curves bool, told *[]pdf.Result) func(*report.Night)
 		), nil
 	}
 }
+
+// isOutput tells whether a file has the name of one that a sweep publishes.
+func isOutput(name string) bool {
+	switch name {
+	case "summary.xlsx", pdf.FileName(1), "evaluations.jsonl", "unread.jsonl", "waiting.jsonl":
+		return true
+	}
+	return pdf.IsFurtherVolume(name)
+}

@@ -10,6 +10,7 @@ import (
 
 	"lastdrop/cmd/internal/night"
 	"lastdrop/cmd/internal/refit"
+	"lastdrop/cmd/internal/schemaview"
 	"lastdrop/report/pdf"
 )
 
@@ -22,15 +23,40 @@ func (p *program) request(c *cli.Context) (*request, error) {
 	r.night = night.Options{
 		Folders: c.Args().Slice(), Into: c.String("into"), MinAge: c.Duration("min-age"), Now: p.now,
 		Workers: c.Int("workers"), Laboratory: c.String("laboratory"), Estimator: c.String("estimator"),
-		Lastdrop: version, Limits: refit.Limits(), Refit: evaluator(c.String("estimator")),
+		Lastdrop: version, Limits: refit.Limits(),
 	}
 	r.pages = pdf.Options{Letter: c.String("paper") == "letter", Pages: c.String("pages")}
 	if err := r.check(c); err != nil {
 		return r, err
 	}
 	var err error
-	r.night.Date, err = p.publicationDate()
-	return r, err
+	if r.night.Date, err = p.publicationDate(); err != nil {
+		return r, err
+	}
+	if r.set, err = schemaSet(c.String("schemas")); err != nil {
+		return r, err
+	}
+	r.night.Refit, r.night.Origins = evaluator(r.night.Estimator, r.set), schemaview.Origins(r.set)
+	for _, list := range []struct {
+		option string
+		to     *[]night.Pattern
+	}{{"include", &r.night.Include}, {"exclude", &r.night.Exclude}} {
+		if *list.to, err = patterns(list.option, c.StringSlice(list.option)); err != nil {
+			return r, err
+		}
+	}
+	return r, nil
+}
+
+func patterns(option string, texts []string) (all []night.Pattern, err error) {
+	for _, s := range texts {
+		p, err := night.ParsePattern(s)
+		if err != nil {
+			return nil, usage(sweepHelp, "--%s %v", option, err)
+		}
+		all = append(all, p)
+	}
+	return all, nil
 }
 
 func (r *request) check(c *cli.Context) error {

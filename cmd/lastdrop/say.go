@@ -17,7 +17,13 @@ func (p *program) tell(err error) {
 	if err == nil {
 		return
 	}
-	fmt.Fprintf(p.stderr, "lastdrop: %s\n", oneLine(err.Error()))
+	lines := []error{err}
+	if f, ok := errors.AsType[*faults](err); ok {
+		lines = f.all
+	}
+	for _, line := range lines {
+		fmt.Fprintf(p.stderr, "lastdrop: %s\n", oneLine(line.Error()))
+	}
 	if try := nextStep(err); try != "" {
 		fmt.Fprintf(p.stderr, "lastdrop: try: %s\n", oneLine(try))
 	}
@@ -28,6 +34,9 @@ func nextStep(err error) string {
 		return e.try
 	}
 	if e, ok := errors.AsType[*failure](err); ok {
+		return e.try
+	}
+	if e, ok := errors.AsType[*faults](err); ok {
 		return e.try
 	}
 	if e, ok := errors.AsType[*night.Error](err); ok {

@@ -3,6 +3,7 @@ package main
 import (
 	"fmt"
 	"log/slog"
+	"slices"
 	"strings"
 
 	"github.com/urfave/cli/v2"
@@ -19,11 +20,12 @@ func (p *program) sweepCommand() *command {
 	return &command{
 		name: "sweep", use: "FOLDER… --into OUT",
 		says: "refit every dump of the folders and publish one night",
-		more: "Reads the dumps (*.csv, *.txt, *.tsv, *.dat) in FOLDER and below, refits every endpoint from the raw readings, and writes summary.xlsx, summary.pdf (with more than 200 pages of runs also summary-2.pdf and so on), evaluations.jsonl, unread.jsonl, waiting.jsonl and last-sweep.txt into OUT: all of them or none. The summary stands on stdout. A dump is never changed. " +
+		more: "Reads the dumps (*.csv, *.txt, *.tsv, *.dat, and those in *.zip and *.gz) in FOLDER and below, refits every endpoint from the raw readings, and writes summary.xlsx, summary.pdf (with more than 200 pages of runs also summary-2.pdf and so on), evaluations.jsonl, unread.jsonl, waiting.jsonl and last-sweep.txt into OUT: all of them or none. A FOLDER may also be one dump or one archive. The summary stands on stdout. A dump is never changed. " +
 			"Exit: 0 done, whatever was found; 1 could not finish; 2 usage; 4 --fail-on found something; 6 no dump; 75 another sweep is at work in OUT; 130, 143 stopped.",
 		example: []string{
 			"lastdrop sweep /srv/titrations --into /srv/nights",
 			"lastdrop sweep bench-a bench-b --into out --min-age 15m --fail-on disputed",
+			"lastdrop sweep /srv/dumps --into out --include 'dumps/bench-a' --exclude old",
 		},
 		options: sweepOptions(),
 		action:  p.sweep,
@@ -33,6 +35,9 @@ func (p *program) sweepCommand() *command {
 func sweepOptions() []option {
 	return []option{
 		{flag: &cli.StringFlag{Name: "into"}, value: "OUT", says: "folder that the night is written into, made when missing; it belongs to lastdrop and lies outside every FOLDER", example: "--into /srv/nights"},
+		schemasOption(),
+		{flag: &cli.StringSliceFlag{Name: "include"}, value: "PATTERN", says: "take only dumps that it matches. * stands for any text within a name, ? for one sign, ** for any folders. Without / it is held against the names of the dump and of each folder and archive around it; with / against the dump's name as reports print it, or the beginning of that. May be given again", without: "all dumps", example: "--include '*.csv'"},
+		{flag: &cli.StringSliceFlag{Name: "exclude"}, value: "PATTERN", says: "leave out dumps that it matches, also included ones; may be given again", without: "none", example: "--exclude 'titrations/**/old'"},
 		{flag: &cli.StringFlag{Name: "estimator"}, value: "NAME", says: "use this estimator for every run: " + strings.Join(refit.Estimators(), ", "), without: "each run has the usual one for its readings"},
 		{flag: &cli.DurationFlag{Name: "min-age"}, value: "TIME", says: "younger dumps wait for the next sweep; s, m or h stand behind the number", without: "0s", example: "--min-age 15m"},
 		{flag: &cli.StringSliceFlag{Name: "fail-on"}, value: "WHAT", says: "exit with 4 when there is one: unread, disputed, or doubtful (disputed ones too); may be given again", without: "0 whatever was found"},
@@ -50,6 +55,7 @@ func sweepOptions() []option {
 // request is a sweep as it was asked for.
 type request struct {
 	night  night.Options
+	set    []*schemas.Schema // in force
 	pages  pdf.Options
 	failOn []string
 	curves bool
@@ -67,8 +73,9 @@ func (p *program) sweep(c *cli.Context) error {
 		return err
 	}
 	var pages []pdf.Result
-	r.night.Outputs, r.night.Former = outputs(r.pages, r.curves, &pages), pdf.IsFurtherVolume
+	r.night.Outputs, r.night.Own = outputs(r.pages, r.curves, &pages), isOutput
 	r.night.Log = slog.New(warnings{p: p, quiet: r.quiet})
+	tellReplaced(r.night.Log, r.set)
 	result, err := night.Sweep(c.Context, r.night)
 	if err == nil {
 		tellPages(r.night.Log, pages)
@@ -126,7 +133,12 @@ func tellPages(log *slog.Logger, volumes []pdf.Result) {
 // published files cannot: they do not know where the folders lie.
 func (p *program) tellUnread(r *request, result *night.Result) {
 	if n := len(result.Night.Unread); n > 0 && !r.quiet {
-		fmt.Fprintf(p.stderr, "lastdrop: try: %s\n", oneLine("lastdrop look "+shellWord(result.Path(result.Night.Unread[0].Dump))))
+		first := &result.Night.Unread[0]
+		command := "look "
+		if strings.HasPrefix(first.Next, "lastdrop schema draft ") {
+			command = "schema draft "
+		}
+		p.say("try: lastdrop %s%s", command, shellWord(result.Path(first.Dump)))
 	}
 }
 
@@ -154,9 +166,22 @@ func found(n *report.Night, failOn []string) error {
 	return &foundError{msg: "the night is published; --fail-on found " + strings.Join(said, ", ")}
 }
 
-// evaluator is the refit of every dump with the shipped schemas.
-func evaluator(estimator string) night.Refit {
-	set, o := schemas.Shipped(), refit.Options{Estimator: estimator, Lastdrop: version}
+// tellReplaced names the shipped schemas that the laboratory's own replace.
+func tellReplaced(log *slog.Logger, set []*schemas.Schema) {
+	var names []string
+	for _, s := range set {
+		if s.Replaces && !slices.Contains(names, s.Name) {
+			names = append(names, s.Name)
+		}
+	}
+	if len(names) > 0 {
+		log.Warn("the laboratory's own schemas stand in the place of shipped ones", "schemas", strings.Join(names, ", "))
+	}
+}
+
+// evaluator is the refit of every dump with the schemas.
+func evaluator(estimator string, set []*schemas.Schema) night.Refit {
+	o := refit.Options{Estimator: estimator, Lastdrop: version}
 	return func(data []byte, name, sha string) ([]report.Evaluation, []report.Unread) {
 		return refit.Dump(data, name, sha, set, o)
 	}

@@ -30,6 +30,7 @@ func Summary(w io.Writer, n *report.Night, o SummaryOptions) error {
 	p.urgent(n)
 	p.unreadShort(n)
 	p.waiting(n)
+	p.passed(n)
 	p.files(o)
 	p.blank()
 	p.sentence(plain, "", report.Caution)

@@ -22,7 +22,7 @@ func inventedNight() *report.Night {
 			{Record: 1, State: "earlier", Dump: "incoming/x77.txt", DumpSHA256: hash('8'), Line: 1, Says: "no schema recognises this dump",
 				Hint: "draft one", Next: "lastdrop schema draft incoming/x77.txt"},
 		},
-		Schemas: []report.SchemaUse{{Name: "bench-a", SHA256: hash('a'), Runs: 4}, {Name: "bench-c", SHA256: hash('c'), Runs: 2}},
+		Schemas: []report.SchemaUse{{Name: "bench-a", SHA256: hash('a'), Runs: 4, From: report.Shipped}, {Name: "bench-c", SHA256: hash('c'), Runs: 2, From: report.ReplacesShipped}},
 		Limits: []report.Limit{
 			{Flag: "overshoot", Value: 8, Unit: "%", Means: "share of the endpoint's volume that the dose across it has", Source: "chosen for this project"},
 			{Flag: "disagrees", Value: 0.5, Unit: "%", Means: "refit minus indicated, of like kind, in % of the refit", Source: "common practice, no source"},

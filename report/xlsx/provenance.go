@@ -71,9 +71,9 @@ func laySchemas(s *sheet, schemas []report.SchemaUse) {
 		s.put(0, text("No schema read a run."))
 		return
 	}
-	s.put(0, head("schema"), headRight("runs read"), head(""), head("SHA-256 of the schema"))
+	s.put(0, head("schema"), headRight("runs read"), head(""), head("SHA-256 of the schema"), head("where from"))
 	for _, u := range schemas {
-		s.put(0, text(u.Name), count(u.Runs), cell{}, text(u.SHA256))
+		s.put(0, text(u.Name), count(u.Runs), cell{}, text(u.SHA256), text(u.From))
 	}
 }
 

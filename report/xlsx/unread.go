@@ -11,15 +11,16 @@ var unreadColumns = []column{
 
 func layUnread(b *book, p *places) error {
 	unread := p.night.Unread
-	s := b.open(layout{name: unreadSheet, columns: unreadColumns, table: true, frozen: 2, pagesWide: 2, rows: len(unread), tab: second}, p.footer)
+	s := b.open(layout{name: unreadSheet, columns: unreadColumns, table: true, frozen: 2, pagesWide: 2, rows: len(unread) + passedRows(p.night), tab: second}, p.footer)
 	for i := range unread {
 		u := &unread[i]
 		s.put(0, cell{unreadMark + " " + u.State, plain()}, wrapped(u.Dump), countIf(u.Run), countIf(u.Line), countIf(u.Column), text(u.Field),
 			wrapped(u.Says), wrapped(u.Hint), wrapped(u.Next), text(u.Schema), text(u.DumpSHA256))
 	}
-	if len(unread) == 0 {
+	if len(unread)+passedRows(p.night) == 0 {
 		s.put(0, text("Every dump was read."))
 	}
+	layPassed(s, p.night)
 	return s.finish()
 }
 

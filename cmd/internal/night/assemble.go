@@ -1,6 +1,8 @@
 package night
 
 import (
+	"maps"
+	"slices"
 	"sort"
 	"strings"
 
@@ -8,12 +10,21 @@ import (
 )
 
 // assemble makes the night: evaluations and unread in the order of dump, then
-// run; the days of the runs; the schemas that read them.
-func assemble(evaluations []report.Evaluation, outcomes []outcome, others int, o Options) *report.Night {
+// run; the days of the runs; the schemas that read them; what was passed over.
+func assemble(found *findings, all *yield, o Options) *report.Night {
+	outcomes := all.outcomes
 	n := &report.Night{
 		Lastdrop: o.Lastdrop, Date: o.Date, Laboratory: o.Laboratory, Estimator: o.Estimator,
-		Evaluations: evaluations, Limits: o.Limits, OtherFiles: others,
+		Evaluations: join(outcomes), Limits: o.Limits, OtherFiles: found.others + all.others,
+		Excluded: found.excluded + all.excluded, Links: found.links, Specials: found.specials,
 	}
+	dumps := map[string]string{}
+	for i := range outcomes {
+		if !outcomes[i].dump.named { // who picks files leaves others out
+			dumps[outcomes[i].dump.name] = outcomes[i].sha
+		}
+	}
+	n.Gaps = gaps(dumps, slices.Sorted(maps.Keys(named(dumps, found.names, all.names))))
 	for i := range outcomes {
 		out := &outcomes[i]
 		n.Unread = append(n.Unread, out.unread...)
@@ -26,9 +37,23 @@ func assemble(evaluations []report.Evaluation, outcomes []outcome, others int, o
 	}
 	sort.SliceStable(n.Unread, func(i, j int) bool { return before(&n.Unread[i], &n.Unread[j]) })
 	n.FirstDay, n.LastDay = days(n.Evaluations)
-	n.Schemas = schemasUsed(n.Evaluations)
+	n.Schemas = schemasUsed(n.Evaluations, o.Origins)
 	n.Invented = invented(n.Schemas)
 	return n
+}
+
+// named are all names that were met, each once.
+func named(dumps map[string]string, others ...[]string) map[string]bool {
+	all := map[string]bool{}
+	for name := range dumps {
+		all[name] = true
+	}
+	for _, names := range others {
+		for _, name := range names {
+			all[name] = true
+		}
+	}
+	return all
 }
 
 // stamp fills what belongs to the publication. Without a ledger every run is
@@ -113,14 +138,14 @@ func days(evaluations []report.Evaluation) (first, last string) {
 	return first, last
 }
 
-func schemasUsed(evaluations []report.Evaluation) []report.SchemaUse {
+func schemasUsed(evaluations []report.Evaluation, origins map[string]string) []report.SchemaUse {
 	runs := map[report.SchemaUse]int{}
 	for i := range evaluations {
 		runs[report.SchemaUse{Name: evaluations[i].Schema, SHA256: evaluations[i].SchemaSHA256}]++
 	}
 	used := make([]report.SchemaUse, 0, len(runs))
 	for s, n := range runs {
-		s.Runs = n
+		s.Runs, s.From = n, origins[s.SHA256]
 		used = append(used, s)
 	}
 	sort.Slice(used, func(i, j int) bool {
@@ -130,11 +155,11 @@ func schemasUsed(evaluations []report.Evaluation) []report.SchemaUse {
 	return used
 }
 
-// invented is true when a schema of the demonstration laboratory's benches
-// read a run. Those instruments are invented, so are their figures.
+// invented is true when a shipped schema of the demonstration laboratory's
+// benches read a run. Those instruments are invented, so are their figures.
 func invented(used []report.SchemaUse) bool {
 	for _, s := range used {
-		if strings.HasPrefix(s.Name, "bench-") {
+		if strings.HasPrefix(s.Name, "bench-") && (s.From == "" || s.From == report.Shipped) {
 			return true
 		}
 	}

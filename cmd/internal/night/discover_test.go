@@ -12,7 +12,7 @@ import (
 func TestWhichFilesAreDumps(t *testing.T) {
 	b := newBench(t, map[string]string{
 		"z.csv": aRunOf(1), "B/ä.TXT": aRunOf(2), "a/x.tsv": aRunOf(3), "a.dat": aRunOf(4),
-		"notes.md": "", "old.zip": "", "deep/er.csv.gz": "", // other files
+		"notes.md":    "",                                    // an other file
 		".hidden.csv": aRunOf(5), ".hidden/x.csv": aRunOf(6), // passed over
 	})
 	outside := b.path("outside")
@@ -31,12 +31,11 @@ func TestWhichFilesAreDumps(t *testing.T) {
 		dumps = append(dumps, e.Dump)
 	}
 	equalLists(t, "dumps in byte order", dumps, []string{"dumps/B/ä.TXT", "dumps/a.dat", "dumps/a/x.tsv", "dumps/z.csv"})
-	equal(t, "other files", r.Night.OtherFiles, 6)
+	equal(t, "other files", r.Night.OtherFiles, 1)
 	equal(t, "dumps", r.Dumps, 4)
-	for _, want := range []string{"archives=2 first=dumps/deep/er.csv.gz", "links=3 first=dumps/again.csv"} {
-		if !strings.Contains(b.log.String(), want) {
-			t.Errorf("log: got %s, want %s in it", b.log.String(), want)
-		}
+	equalLists(t, "links", r.Night.Links, []string{"dumps/again.csv", "dumps/link", "dumps/link.csv"})
+	if want := "links=3 first=dumps/again.csv"; !strings.Contains(b.log.String(), want) {
+		t.Errorf("log: got %s, want %s in it", b.log.String(), want)
 	}
 }
 
@@ -60,9 +59,15 @@ func TestFoldersThatCannotBeSweptTogether(t *testing.T) {
 		{"OUT inside", func(b *bench) { b.opts.Into = b.path("dumps/new/out") }, BadRequest, "lies in the swept folder"},
 		{"OUT equal", func(b *bench) { b.opts.Into = b.path("dumps/../dumps") }, BadRequest, "lies in the swept folder"},
 		{"OUT around", func(b *bench) { b.opts.Into = b.dir }, BadRequest, "lies in OUT"},
-		{"missing", func(b *bench) { b.opts.Folders = []string{b.path("dumbs")} }, Unfinished, "there is no such folder"},
-		{"a file", func(b *bench) { b.opts.Folders = []string{b.path("dumps/1.csv")} }, BadRequest, "is a file, a sweep takes folders"},
-		{"no name", func(b *bench) { b.opts.Folders = []string{"/"} }, BadRequest, "has no name"},
+		{"missing", func(b *bench) { b.opts.Folders = []string{b.path("dumbs")} }, Unfinished, "there is no such folder or file"},
+		{"a file in OUT", func(b *bench) { b.opts.Folders, b.opts.Into = []string{b.path("dumps/1.csv")}, b.path("dumps") }, BadRequest, "lies in OUT"},
+		{"a file and a folder of equal names", func(b *bench) {
+			b.put("x/dumps/1.csv", aRunOf(2))
+			b.opts.Folders = append(b.opts.Folders, b.path("x/dumps/1.csv"))
+		}, BadRequest, `have the same last name "dumps"`},
+		{"the same folder twice", func(b *bench) { b.opts.Folders = append(b.opts.Folders, b.path("dumps")) }, BadRequest, "have the same last name"},
+		{"no name", func(b *bench) { b.opts.Folders = []string{"/"} }, BadRequest, "has no folder name"},
+		{"a device", func(b *bench) { b.opts.Folders = []string{os.DevNull} }, BadRequest, "is neither a folder nor a regular file"},
 		{"OUT is a file", func(b *bench) { b.put("out", "x") }, Unfinished, "OUT cannot be written"},
 	} {
 		b := newBench(t, map[string]string{"1.csv": aRunOf(1)})
@@ -101,9 +106,9 @@ func (l locked) ReadDir(name string) ([]fs.DirEntry, error) {
 
 func TestUnreadableFolderEndsTheSweep(t *testing.T) {
 	files := locked{fstest.MapFS{"a/1.csv": {}, "b/2.csv": {}}, "b"}
-	_, err := discover(t.Context(), []folder{{path: "/srv/dumps", name: "dumps", files: files}})
+	_, err := discover(t.Context(), []folder{{path: "/srv/dumps", name: "dumps", files: files}}, &Options{})
 	e, ok := errors.AsType[*Error](err)
-	if !ok || e.Kind != Unfinished || e.Error() != "/srv/dumps/b: the folder cannot be read: permission denied" {
+	if !ok || e.Kind != Unfinished || e.Error() != "/srv/dumps/b: cannot be read: permission denied" {
 		t.Errorf("got %v", err)
 	}
 }

@@ -6,6 +6,7 @@ import (
 	"encoding/hex"
 	"fmt"
 	"runtime"
+	"sort"
 
 	"golang.org/x/sync/errgroup"
 
@@ -16,17 +17,26 @@ import (
 // wait.
 type outcome struct {
 	dump        dump
+	sha         string // of its bytes; "" when they were not read
 	evaluations []report.Evaluation
 	readings    []digest // of each evaluation
 	unread      []report.Unread
 	waits       string // "" when it was read
 }
 
+// yield is what a file gave: one outcome, or of an archive one for each dump
+// in it.
+type yield struct {
+	outcomes         []outcome
+	others, excluded int      // of the members of an archive
+	names            []string // of all its members
+}
+
 // evaluate reads and refits every dump, several at once. Outcomes stand in
-// the order of the dumps, whoever finished first. The raw bytes are dropped
-// dump by dump.
-func evaluate(ctx context.Context, dumps []dump, o Options) ([]outcome, error) {
-	outcomes := make([]outcome, len(dumps))
+// the byte order of the names, whoever finished first. The raw bytes are
+// dropped dump by dump.
+func evaluate(ctx context.Context, dumps []dump, o Options) (all yield, err error) {
+	yields := make([]yield, len(dumps))
 	var g errgroup.Group
 	g.SetLimit(workers(o))
 	for i := range dumps {
@@ -34,17 +44,32 @@ func evaluate(ctx context.Context, dumps []dump, o Options) ([]outcome, error) {
 			break
 		}
 		g.Go(func() error {
-			outcomes[i] = evaluateOne(dumps[i], o)
+			if dumps[i].archive {
+				yields[i] = dumps[i].unpack(ctx, o)
+			} else {
+				yields[i].outcomes = []outcome{evaluateOne(dumps[i], o)}
+			}
 			return nil
 		})
 	}
 	if err := g.Wait(); err != nil {
-		return nil, err
+		return yield{}, err
 	}
 	if ctx.Err() != nil {
-		return nil, context.Cause(ctx)
+		return yield{}, context.Cause(ctx)
 	}
-	return outcomes, nil
+	for i := range yields {
+		all.add(&yields[i])
+	}
+	sort.SliceStable(all.outcomes, func(i, j int) bool { return all.outcomes[i].dump.name < all.outcomes[j].dump.name })
+	return all, nil
+}
+
+func (y *yield) add(more *yield) {
+	y.outcomes = append(y.outcomes, more.outcomes...)
+	y.others += more.others
+	y.excluded += more.excluded
+	y.names = append(y.names, more.names...)
 }
 
 func workers(o Options) int {
@@ -71,6 +96,7 @@ func evaluateOne(d dump, o Options) outcome {
 // refit fills the outcome from the bytes of its dump.
 func (out *outcome) refit(data []byte, o Options) {
 	sha := sha(data)
+	out.sha = sha
 	evaluations, unread := safely(o.Refit, data, out.dump.name, sha)
 	if len(evaluations)+len(unread) == 0 {
 		unread = []report.Unread{{Says: "holds no run", Hint: "check that it is the export of a titration"}}

@@ -8,86 +8,141 @@ import (
 	"path/filepath"
 
 	"lastdrop/cmd/internal/night/publish"
+	"lastdrop/ingest/archive"
 )
 
-// folder is a swept folder. Its name begins the name of each of its dumps.
+// folder is a swept folder, or one of which only some files were named. Its
+// name begins the name of each of its dumps.
 type folder struct {
 	path  string // as the user named it
 	name  string // its last path element
-	files fs.FS
-	close func() error
+	files fs.FS  // nil when only files of it were named
+	only  []dump // files that were named
 }
 
-// openFolders names and opens the swept folders. A folder that cannot be
-// named, two of equal names, and OUT lying in a swept folder or the other way
-// round are bad requests: the next sweep would read what this one wrote.
-func openFolders(paths []string, into string) (folders []folder, err error) {
-	defer func() {
-		if err != nil {
-			closeFolders(folders)
-			folders = nil
-		}
-	}()
-	seen := map[string]string{}
+// folders are the swept folders, opened.
+type folders struct {
+	all    []folder
+	places map[string]string   // absolute path by name
+	roots  map[string]*os.Root // by resolved path
+}
+
+// openFolders names and opens what is to be swept: folders and single files.
+// What cannot be named, two folders of equal names, and OUT lying in a swept
+// folder or the other way round are bad requests: the next sweep would read
+// what this one wrote.
+func openFolders(paths []string, into string) (*folders, error) {
+	f := &folders{places: map[string]string{}, roots: map[string]*os.Root{}}
 	for _, path := range paths {
-		f, err := openFolder(path)
-		if err != nil {
-			return folders, err
-		}
-		folders = append(folders, f)
-		if other, twice := seen[f.name]; twice {
-			return folders, &Error{Kind: BadRequest,
-				Msg: fmt.Sprintf("%s and %s have the same last name %q, which begins the name of their dumps in the record", other, path, f.name),
-				Try: "sweep the folder above both, or one of them at a time into its own OUT"}
-		}
-		seen[f.name] = path
-		if err := apart(path, into); err != nil {
-			return folders, err
+		if err := f.open(path, into); err != nil {
+			f.close()
+			return nil, err
 		}
 	}
-	return folders, nil
+	return f, nil
 }
 
-// openFolder opens one folder. What is read through it cannot leave it by
-// symbolic links, also not by those made while the sweep runs.
-func openFolder(path string) (folder, error) {
-	abs, err := filepath.Abs(path)
+func (f *folders) open(path, into string) error {
+	info, err := os.Stat(path)
+	switch {
+	case err != nil:
+		return unreadable(path, err)
+	case info.IsDir():
+		return f.openFolder(path, into)
+	case info.Mode().IsRegular():
+		return f.openFile(path, into)
+	}
+	return &Error{Kind: BadRequest, Msg: path + " is neither a folder nor a regular file", Try: "name a folder or a dump"}
+}
+
+// openFolder opens one folder.
+func (f *folders) openFolder(path, into string) error {
+	in, err := f.at(path, path, true)
 	if err != nil {
-		return folder{}, unreadable(path, err)
+		return err
+	}
+	if err := apart(path, into); err != nil {
+		return err
+	}
+	root, err := f.root(path)
+	if err != nil {
+		return unreadable(path, err)
+	}
+	in.files = root.FS()
+	return nil
+}
+
+// openFile takes one file. Its folder's name begins its own, as if the folder
+// had been swept. A link that the user names is followed.
+func (f *folders) openFile(path, into string) error {
+	in, err := f.at(path, filepath.Dir(path), false)
+	if err != nil {
+		return err
+	}
+	if inside(filepath.Dir(path), into) {
+		return &Error{Kind: BadRequest, Msg: fmt.Sprintf("the dump %s lies in OUT %s", path, into), Try: "name another folder with --into"}
+	}
+	at := real(path)
+	root, err := f.root(filepath.Dir(at))
+	if err != nil {
+		return unreadable(path, err)
+	}
+	in.only = append(in.only, dump{name: in.name + "/" + filepath.Base(path), files: root.FS(), path: filepath.Base(at), archive: archive.Is(path), named: true})
+	return nil
+}
+
+// at returns the folder for a path that was named, a new one or, for further
+// files, the one that is there.
+func (f *folders) at(path, dir string, whole bool) (*folder, error) {
+	abs, err := filepath.Abs(dir)
+	if err != nil {
+		return nil, unreadable(path, err)
 	}
 	name := filepath.Base(abs)
 	if name == string(filepath.Separator) || name == "." {
-		return folder{}, &Error{Kind: BadRequest, Msg: path + " has no name that could begin the name of its dumps",
+		return nil, &Error{Kind: BadRequest, Msg: path + " has no folder name that could begin the name of its dumps",
 			Try: "sweep a folder below it"}
 	}
-	info, err := os.Stat(path)
-	if err != nil {
-		return folder{}, unreadable(path, err)
+	for i := range f.all {
+		if in := &f.all[i]; in.name == name {
+			if f.places[name] == abs && !(whole && in.files != nil) {
+				return in, nil
+			}
+			return nil, &Error{Kind: BadRequest,
+				Msg: fmt.Sprintf("%s and %s have the same last name %q, which begins the name of their dumps in the record", in.path, dir, name),
+				Try: "sweep the folder above both, or one of them at a time into its own OUT"}
+		}
 	}
-	if !info.IsDir() {
-		return folder{}, &Error{Kind: BadRequest, Msg: path + " is a file, a sweep takes folders",
-			Try: "lastdrop look " + path}
+	f.all, f.places[name] = append(f.all, folder{path: dir, name: name}), abs
+	return &f.all[len(f.all)-1], nil
+}
+
+// root opens a folder once. What is read through it cannot leave it by
+// symbolic links, also not by those made while the sweep runs.
+func (f *folders) root(dir string) (*os.Root, error) {
+	if r, open := f.roots[dir]; open {
+		return r, nil
 	}
-	root, err := os.OpenRoot(path)
-	if err != nil {
-		return folder{}, unreadable(path, err)
+	r, err := os.OpenRoot(dir)
+	if err == nil {
+		f.roots[dir] = r
 	}
-	return folder{path: path, name: name, files: root.FS(), close: root.Close}, nil
+	return r, err
+}
+
+func (f *folders) close() {
+	for _, r := range f.roots {
+		r.Close() // opened for reading: nothing to lose
+	}
 }
 
 func unreadable(path string, err error) *Error {
 	if errors.Is(err, fs.ErrNotExist) {
-		return &Error{Kind: Unfinished, Msg: path + ": there is no such folder",
+		return &Error{Kind: Unfinished, Msg: path + ": there is no such folder or file",
 			Try: "check its spelling, and that the disk or share it lies on is there"}
 	}
-	return &Error{Kind: Unfinished, Msg: path + ": the folder cannot be read", Err: cause(err),
+	return &Error{Kind: Unfinished, Msg: path + ": cannot be read", Err: cause(err),
 		Try: "check its permissions, and that the disk or share it lies on is there"}
-}
-
-func closeFolders(folders []folder) {
-	for _, f := range folders {
-		f.close() // opened for reading: nothing to lose
-	}
 }
 
 // apart checks that neither folder lies in the other.
@@ -145,6 +200,11 @@ func claim(o Options) (*publish.Place, error) {
 	case err != nil:
 		return nil, &Error{Kind: Unfinished, Msg: o.Into + ": OUT cannot be written", Err: cause(err),
 			Try: "check that it is a folder, its permissions, and the room on its disk"}
+	}
+	if err := begin(o); err != nil {
+		place.Close() // nothing is in it
+		return nil, &Error{Kind: Unfinished, Msg: o.Into + ": OUT cannot be written", Err: cause(err),
+			Try: "check its permissions, and the room on its disk"}
 	}
 	if place.Unlocked != nil {
 		o.Log.Warn("this file system has no locks; let only one sweep at a time write here", "folder", o.Into, "cause", place.Unlocked)

@@ -92,6 +92,7 @@ func newBench(t *testing.T, dumps map[string]string) *bench {
 		Refit: inventedRefit,
 		Log:   slog.New(slog.NewTextHandler(&b.log, nil)),
 	}
+	b.opts.Own = func(name string) bool { return strings.HasSuffix(name, ".jsonl") }
 	b.outputs(
 		Output{"evaluations.jsonl", func(w io.Writer, n *report.Night) error { return objects(w, n.Evaluations) }},
 		Output{"unread.jsonl", func(w io.Writer, n *report.Night) error { return objects(w, n.Unread) }},

@@ -41,8 +41,9 @@ func (l Last) write(w io.Writer) error {
 		return err
 	}
 	n := l.Result.Night
-	_, err = fmt.Fprintf(w, "published: %s\ndumps: %d\nruns: %d\ndisputed: %d\ndoubtful: %d\nsound: %d\nunread: %d\nwaiting: %d\nother files: %d\n",
+	_, err = fmt.Fprintf(w, "published: %s\ndumps: %d\nruns: %d\ndisputed: %d\ndoubtful: %d\nsound: %d\nunread: %d\nwaiting: %d\nother files: %d\nnot followed: %d\nleft out: %d\ngaps: %d\n",
 		n.Date, l.Result.Dumps, len(n.Evaluations), n.Count(report.VerdictDisputed), n.Count(report.VerdictDoubtful),
-		n.Count(report.VerdictSound), len(n.Unread), len(n.Waiting), n.OtherFiles)
+		n.Count(report.VerdictSound), len(n.Unread), len(n.Waiting), n.OtherFiles,
+		len(n.Links)+len(n.Specials), n.Excluded, len(n.Gaps))
 	return err
 }

@@ -1,11 +1,13 @@
 // Package night is the sweep: folders of dumps become one published night.
 // Its stages stand in a file each, in the order of Sweep:
 //
-//	folders.go   which folders, under which names, and where OUT may lie
-//	discover.go  which files are dumps
-//	evaluate.go  dump by dump: wait, read (read.go), refit, identify (identity.go)
+//	own.go       whether OUT is ours
+//	folders.go   which folders and files, under which names, and where OUT may lie
+//	discover.go  which files are dumps (patterns.go: which of them are wanted)
+//	evaluate.go  dump by dump: wait, read (read.go), refit, identify (identity.go);
+//	             unpack.go does so with the dumps of an archive
 //	join.go      the same run under two names; exported.go and twins.go say where such runs differ
-//	assemble.go  order, verdicts, the night
+//	assemble.go  order, verdicts, the night; gaps.go the run numbers that are missing
 //	publish/     every file or none
 //
 // It computes no endpoint (package refit does) and lays nothing out (package
@@ -25,6 +27,7 @@ import (
 	"time"
 
 	"lastdrop/cmd/internal/night/publish"
+	"lastdrop/ingest/archive"
 	"lastdrop/report"
 )
 
@@ -40,7 +43,10 @@ type Output struct {
 
 // Options are all that a sweep depends on.
 type Options struct {
-	Folders    []string         // as the user named them, at least one
+	Folders    []string         // folders and single dumps as the user named them, at least one
+	Include    []Pattern        // only dumps that one of them matches; none takes all
+	Exclude    []Pattern        // no dump that one of them matches
+	Unpack     archive.Limits   // of each archive; zero for archive.Default
 	Into       string           // OUT; made when missing
 	MinAge     time.Duration    // younger dumps wait; 0 takes every dump
 	Now        func() time.Time // for the age of dumps only
@@ -50,15 +56,17 @@ type Options struct {
 	Estimator  string // what was asked for by name, for the pages that print it
 	Lastdrop   string // program version
 	Limits     []report.Limit
+	Origins    map[string]string // where a schema comes from, by its SHA-256
 	Refit      Refit
 	Log        *slog.Logger // warnings
 
 	// Outputs are the files of a night, in the order in which they are put in
 	// place: those that a person may hold open first; nil for none.
 	Outputs func(*report.Night) ([]Output, error)
-	// Former tells whether a file of OUT, by its name, is an earlier night's
-	// and goes when this night does not have it; nil for none.
-	Former func(name string) bool
+	// Own tells whether a file of OUT, by its name, is one of a night's. An
+	// earlier night's goes when this night does not have it; one that stands
+	// where no sweep has been is somebody's work. Nil for none.
+	Own func(name string) bool
 }
 
 // Result is a published night.
@@ -78,35 +86,38 @@ func (r *Result) Path(dump string) string {
 }
 
 // Sweep reads every dump of the folders and publishes one night into OUT.
-// When it returns an error OUT is as it was. The error is an *Error, or the
-// context's cause when that ended the sweep.
+// When it returns an error OUT is as it was, but that a first one leaves
+// last-sweep.txt. The error is an *Error, or the context's cause when that
+// ended the sweep.
 func Sweep(ctx context.Context, o Options) (*Result, error) {
-	folders, err := openFolders(o.Folders, o.Into)
+	if err := ours(o); err != nil {
+		return nil, err
+	}
+	in, err := openFolders(o.Folders, o.Into)
 	if err != nil {
 		return nil, err
 	}
-	defer closeFolders(folders)
+	defer in.close()
 	place, err := claim(o)
 	if err != nil {
 		return nil, err
 	}
 	defer place.Close() // what it cannot clean, the next Open does
 
-	found, err := discover(ctx, folders)
+	found, err := discover(ctx, in.all, &o)
 	if err != nil {
 		return nil, err
 	}
 	found.warn(o.Log)
-	if len(found.dumps) == 0 {
-		return nil, found.nothing()
-	}
-	outcomes, err := evaluate(ctx, found.dumps, o)
+	all, err := evaluate(ctx, found.dumps, o)
 	if err != nil {
 		return nil, err
 	}
-	n := assemble(join(outcomes), outcomes, found.others, o)
-	result := &Result{Night: n, Dumps: len(found.dumps), folders: map[string]string{}}
-	for _, f := range folders {
+	if len(all.outcomes) == 0 {
+		return nil, found.nothing(found.others+all.others, found.excluded+all.excluded)
+	}
+	result := &Result{Night: assemble(found, &all, o), Dumps: len(all.outcomes), folders: map[string]string{}}
+	for _, f := range in.all {
 		result.folders[f.name] = f.path
 	}
 	if err := put(ctx, place, result, o); err != nil {
@@ -152,13 +163,13 @@ func unfinished(o Options, err error) error {
 
 // former lists the files of an earlier night that this night does not have.
 func former(files []publish.File, o Options) (gone []string, err error) {
-	if o.Former == nil {
+	if o.Own == nil {
 		return nil, nil
 	}
 	entries, err := os.ReadDir(o.Into)
 	for _, e := range entries {
 		has := slices.ContainsFunc(files, func(f publish.File) bool { return f.Name == e.Name() })
-		if !has && e.Type().IsRegular() && o.Former(e.Name()) {
+		if !has && e.Type().IsRegular() && o.Own(e.Name()) {
 			gone = append(gone, e.Name())
 		}
 	}

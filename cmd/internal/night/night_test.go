@@ -36,8 +36,13 @@ func TestSweepPublishesInOrder(t *testing.T) {
 	equalLists(t, "unread", unread, []string{"dumps/a.csv:1 first", "dumps/a.csv:2 second", "dumps/b.csv:11 later"})
 	equal(t, "first day", n.FirstDay, "2031-04-02")
 	equal(t, "last day", n.LastDay, "2031-04-03")
-	equal(t, "schemas", fmt.Sprint(n.Schemas), "[{bench-b 00 1} {plain 00 2}]")
+	equal(t, "schemas", fmt.Sprint(n.Schemas), "[{bench-b 00 1 } {plain 00 2 }]")
 	equal(t, "invented", n.Invented, true)
+
+	b.opts.Origins = map[string]string{"00": "replaces shipped"}
+	n = b.sweep().Night
+	equal(t, "schemas with origin", fmt.Sprint(n.Schemas), "[{bench-b 00 1 replaces shipped} {plain 00 2 replaces shipped}]")
+	equal(t, "a laboratory's own bench-b is not invented", n.Invented, false)
 }
 
 // mixed is a laboratory with all that joining and waiting can bring.
@@ -46,6 +51,7 @@ func mixed(t *testing.T) *bench {
 	for i := range 40 {
 		dumps[fmt.Sprintf("%c/%d.csv", 'a'+i%5, i)] = aRunOf(i/2, "flag overshoot doubtful")
 	}
+	dumps["archive.zip"] = zipOf(t, "z/7.csv", aRunOf(7, "flag overshoot doubtful"), "a/8.csv", aRunOf(8, "flag overshoot doubtful"))
 	return newBench(t, dumps)
 }
 
@@ -162,7 +168,7 @@ func TestFilesOfAnEarlierNight(t *testing.T) {
 	part := func(name string) Output {
 		return Output{name, func(w io.Writer, _ *report.Night) error { _, err := io.WriteString(w, name); return err }}
 	}
-	b.opts.Former = func(name string) bool { return strings.HasPrefix(name, "part-") }
+	b.opts.Own = func(name string) bool { return strings.HasPrefix(name, "part-") }
 	b.outputs(part("part-1"), part("part-2"), part("part-3"))
 	b.sweep()
 	b.put("out/notes.txt", "mine")
@@ -177,7 +183,7 @@ func TestFilesOfAnEarlierNight(t *testing.T) {
 	for _, e := range entries {
 		got = append(got, e.Name())
 	}
-	equalLists(t, "OUT", got, []string{"notes.txt", "part-1", "part-2"})
+	equalLists(t, "OUT", got, []string{"last-sweep.txt", "notes.txt", "part-1", "part-2"})
 }
 
 func TestTwoSweepsAtOnce(t *testing.T) {
@@ -208,7 +214,7 @@ func TestLastSweep(t *testing.T) {
 		t.Fatal(err)
 	}
 	equal(t, "after a night", b.read("out/last-sweep.txt"), "time: 2031-04-03T02:15:00Z\nlastdrop: 0.0.0\nexit: 6\n"+
-		"published: 2031-04-03\ndumps: 2\nruns: 1\ndisputed: 0\ndoubtful: 0\nsound: 1\nunread: 1\nwaiting: 0\nother files: 1\n")
+		"published: 2031-04-03\ndumps: 2\nruns: 1\ndisputed: 0\ndoubtful: 0\nsound: 1\nunread: 1\nwaiting: 0\nother files: 1\nnot followed: 0\nleft out: 0\ngaps: 0\n")
 	last.Result = nil
 	if err := last.Write(b.path("out")); err != nil {
 		t.Fatal(err)

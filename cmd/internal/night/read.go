@@ -15,6 +15,8 @@ import (
 // memory (common practice, no source).
 const maxDumpBytes = 64 << 20
 
+const changedMeanwhile = "changed while it was read; the next sweep takes it"
+
 // read returns the bytes of a dump, or why it has to wait (says), or why it
 // cannot be read. Only one of the three is set.
 func (d dump) read(o Options) (data []byte, waits string, problem *report.Unread) {
@@ -39,7 +41,7 @@ func (d dump) read(o Options) (data []byte, waits string, problem *report.Unread
 	case err != nil:
 		return d.unread(err)
 	case after.Size() != before.Size() || !after.ModTime().Equal(before.ModTime()) || int64(len(data)) != after.Size():
-		return nil, "changed while it was read; the next sweep takes it", nil
+		return nil, changedMeanwhile, nil
 	}
 	return data, "", nil
 }
