@@ -18,6 +18,7 @@ type longTable struct {
 	last     *draft
 	lastName string
 	blanks   []int // lines skipped since the last row
+	rowLike  []int // comment lines that could be rows
 	damaged  int   // line of the first row that cannot be cut into its cells, 0 for none
 
 	inFooter  bool
@@ -81,7 +82,7 @@ func (l *longTable) tableRow() {
 	row := &l.row
 	switch {
 	case row.Comment && l.head.rowLike():
-		l.head.repairs.Add(row.Line, rowLikeComment)
+		l.rowLike = append(l.rowLike, row.Line)
 		return
 	case row.Comment:
 		if l.last != nil {

@@ -167,16 +167,8 @@ func (d *draft) comment() {
 	case d.columns != nil && d.schema.Preamble.Lines == schemas.CommentLines:
 		d.repairs.Add(d.row.Line, "comment below the header not used")
 	case d.columns != nil && d.rowLike():
-		d.repairs.Add(d.row.Line, rowLikeComment)
+		d.lostRow(d.row.Line, "a comment with the cells of a row")
 	}
-}
-
-const rowLikeComment = "a comment with as many cells as a row, not used"
-
-// rowLike reports whether a comment line could be a row whose first character
-// is damaged.
-func (d *draft) rowLike() bool {
-	return bytes.Count(d.text.Body[d.row.From:d.row.To], []byte{d.schema.Dialect.Delimiter}) >= d.columns.width-1
 }
 
 // footerBegins reports whether the row at hand begins the lines below the

@@ -29,7 +29,7 @@ type written struct {
 // writtenDialects are all the dialects that have a truth.
 func writtenDialects(t *testing.T) []written {
 	t.Helper()
-	truths, err := filepath.Glob(filepath.Join(dialects, "truth", "*.csv"))
+	truths, err := filepath.Glob(filepath.Join(dialects, "written", "*.truth.csv"))
 	if err != nil || len(truths) < 11 {
 		t.Fatal(len(truths), err)
 	}
@@ -39,21 +39,21 @@ func writtenDialects(t *testing.T) []written {
 		if err != nil {
 			t.Fatal(err)
 		}
-		w := written{truth: truthRows(t, truth, src), name: strings.TrimSuffix(filepath.Base(truth), ".csv")}
-		files, _ := filepath.Glob(filepath.Join(dialects, w.name+".*"))
+		w := written{truth: truthRows(t, truth, src), name: strings.TrimSuffix(filepath.Base(truth), ".truth.csv")}
+		files, _ := filepath.Glob(filepath.Join(dialects, "written", w.name+".*"))
 		for _, path := range files {
 			data, err := os.ReadFile(path)
 			if err != nil {
 				t.Fatal(err)
 			}
 			switch {
-			case strings.HasSuffix(path, ".want.txt"):
+			case path == truth:
 			case filepath.Ext(path) == ".toml":
 				if w.schema, err = schemas.Parse(path, data); err != nil {
 					t.Fatal(err)
 				}
 			default:
-				w.path, w.data = path, data
+				w.path, w.data = "dialects/"+filepath.Base(path), data // its folder is a fact
 			}
 		}
 		list = append(list, w)
