@@ -166,6 +166,8 @@ func (d *draft) comment() {
 		d.commentStatement()
 	case d.columns != nil && d.schema.Preamble.Lines == schemas.CommentLines:
 		d.repairs.Add(d.row.Line, "comment below the header not used")
+	case d.columns != nil && d.rowLike():
+		d.lostRow(d.row.Line, "a comment with the cells of a row")
 	}
 }
 
@@ -231,6 +233,9 @@ func (d *draft) below() {
 func (d *draft) markRow() {
 	if d.row.Fault != "" {
 		d.repairs.Add(d.row.Line, d.row.Fault)
+	}
+	if d.schema.Footer.Lines == schemas.TextLines || d.schema.Preamble.Lines == schemas.TextLines {
+		d.tellKeys(d.text.Body[d.row.From:d.row.To])
 	}
 	for i, c := range d.row.Cells {
 		switch {

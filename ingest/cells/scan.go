@@ -120,12 +120,14 @@ func (s *Scanner) scanCells(r *Row) {
 	body, delimiter := s.Body, s.Delimiter
 	i := s.pos
 	for {
-		for i < len(body) && (s.isBlank(body[i]) || s.Repeated && body[i] == delimiter) {
+		for i < len(body) && s.isBlank(body[i]) {
 			i++
 		}
-		if s.Repeated && len(r.Cells) > 0 && (i == len(body) || body[i] == '\n' || body[i] == '\r') {
-			s.endLine(r, i)
-			return
+		if s.Repeated {
+			if i = s.skipRepeated(i); len(r.Cells) > 0 && (i == len(body) || body[i] == '\n' || body[i] == '\r') {
+				s.endLine(r, i)
+				return
+			}
 		}
 		if i < len(body) && s.Quote != 0 && body[i] == s.Quote {
 			if i = s.quotedCell(r, i); r.Fault != "" {
@@ -153,6 +155,15 @@ func (s *Scanner) scanCells(r *Row) {
 		}
 		i++
 	}
+}
+
+// skipRepeated returns the offset of the first byte from i on that is neither
+// delimiter nor blank.
+func (s *Scanner) skipRepeated(i int) int {
+	for i < len(s.Body) && (s.isBlank(s.Body[i]) || s.Body[i] == s.Delimiter) {
+		i++
+	}
+	return i
 }
 
 // quotedCell reads a cell that begins with a quote at i and returns the offset
