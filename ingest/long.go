@@ -18,6 +18,7 @@ type longTable struct {
 	last     *draft
 	lastName string
 	blanks   []int // lines skipped since the last row
+	damaged  int   // line of the first row that cannot be cut into its cells, 0 for none
 
 	inFooter  bool
 	titles    [][]byte // of the footer's cells
@@ -63,7 +64,9 @@ func (l *longTable) close() {
 	if len(l.runs) == 0 {
 		l.reader.problems = append(l.reader.problems, &schemas.Problem{Path: l.path, Line: l.head.columns.line, Msg: "no row below the header", Hint: "the dump is cut off; export it again"})
 	}
+	l.tellLost()
 	for _, d := range l.runs {
+		d.repairs.Join(&l.head.repairs)
 		if l.schema.Footer.Begin != "" && !d.total && d.fault == nil {
 			d.refuse(l.row.Line, 0, -1, "", fmt.Sprintf("the dump ends without the footer row of run %s", cells.Quoted([]byte(d.name))), "the dump is cut off; export it again")
 		}
@@ -77,6 +80,9 @@ func (l *longTable) tableRow() {
 	i := l.head.columns.run
 	row := &l.row
 	switch {
+	case row.Comment && l.head.rowLike():
+		l.head.repairs.Add(row.Line, rowLikeComment)
+		return
 	case row.Comment:
 		if l.last != nil {
 			l.last.comment()
@@ -87,19 +93,23 @@ func (l *longTable) tableRow() {
 			l.blanks = append(l.blanks, row.Line)
 		}
 		return
-	case l.last != nil && l.last.headerAgain(), l.last == nil && l.head.headerAgain():
+	case l.head.headerAgain():
 		return
 	}
 	name := []byte{}
 	if i < len(row.Cells) {
 		name = l.scan.Bytes(row.Cells[i])
 	}
-	if len(row.Cells) != l.head.columns.width && l.byName[string(name)] == nil && l.last != nil {
+	cut := *row
+	if cut.DropEmptyTail(l.head.columns.width); len(cut.Cells) != l.head.columns.width && l.byName[string(name)] == nil && l.last != nil {
 		name = []byte(l.lastName) // most likely a part of the row before
 	}
 	d := l.of(name)
 	d.blanks, l.blanks = l.blanks, d.blanks[:0]
 	d.take()
+	if row.Ended && l.damaged == 0 && (row.Fault != "" || len(row.Cells) != l.head.columns.width) {
+		l.damaged = row.Line
+	}
 }
 
 // of returns the run of this name; a new one when it is the first time.
@@ -112,7 +122,6 @@ func (l *longTable) of(name []byte) *draft {
 		d = l.begin(l.row.Line)
 		d.name = string(name)
 		d.columns, d.statements = l.head.columns, append([]statement(nil), l.head.statements...)
-		d.repairs = l.head.repairs.Copy()
 		d.lastLine = l.row.Line
 		if len(name) == 0 {
 			d.refuseRow(l.row.From, "run", "the cell that names the run is empty", "the line is damaged; export the dump again")

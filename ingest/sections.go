@@ -166,7 +166,17 @@ func (d *draft) comment() {
 		d.commentStatement()
 	case d.columns != nil && d.schema.Preamble.Lines == schemas.CommentLines:
 		d.repairs.Add(d.row.Line, "comment below the header not used")
+	case d.columns != nil && d.rowLike():
+		d.repairs.Add(d.row.Line, rowLikeComment)
 	}
+}
+
+const rowLikeComment = "a comment with as many cells as a row, not used"
+
+// rowLike reports whether a comment line could be a row whose first character
+// is damaged.
+func (d *draft) rowLike() bool {
+	return bytes.Count(d.text.Body[d.row.From:d.row.To], []byte{d.schema.Dialect.Delimiter}) >= d.columns.width-1
 }
 
 // footerBegins reports whether the row at hand begins the lines below the
@@ -231,6 +241,9 @@ func (d *draft) below() {
 func (d *draft) markRow() {
 	if d.row.Fault != "" {
 		d.repairs.Add(d.row.Line, d.row.Fault)
+	}
+	if d.schema.Footer.Lines == schemas.TextLines || d.schema.Preamble.Lines == schemas.TextLines {
+		d.tellKeys(d.text.Body[d.row.From:d.row.To])
 	}
 	for i, c := range d.row.Cells {
 		switch {

@@ -3,6 +3,7 @@ package ingest
 import (
 	"bytes"
 	"fmt"
+	"slices"
 	"strings"
 
 	"lastdrop/ingest/cells"
@@ -45,12 +46,34 @@ func (d *draft) cellStatement() {
 		return
 	}
 	value := row[1]
+	if key := d.scan.Bytes(row[0]); value.Empty() {
+		d.remark(key, d.schema.Dialect.Delimiter)
+		if d.endsNumber(key) {
+			d.repairs.Add(d.row.Line, fmt.Sprintf("%s has no value, not used; it may be the rest of the line above", cells.Quoted(key)))
+		}
+	}
 	d.strayQuote(d.row.Line, value)
 	if len(row) > 2 {
 		value.To, value.Quoted = row[len(row)-1].To, false
 		d.repairs.Add(d.row.Line, "the value holds the delimiter and was taken whole")
 	}
 	d.state(row[0], value, false)
+}
+
+// endsNumber reports whether a text could be the end of a number: digits, the
+// decimal mark or what stands behind it.
+func (d *draft) endsNumber(b []byte) bool {
+	if len(b) > 0 && (b[0]-'0' < 10 || b[0] == d.schema.Dialect.DecimalChar) {
+		return true
+	}
+	ends := false
+	for i := range d.schema.Facts {
+		ends = ends || slices.Contains(d.schema.Facts[i].Suffixes, string(b))
+	}
+	for i := range d.schema.Indicated {
+		ends = ends || slices.Contains(d.schema.Indicated[i].Suffixes, string(b))
+	}
+	return ends
 }
 
 // strayQuote tells a quote within an unquoted text, which is kept: it may be
@@ -73,7 +96,7 @@ func (d *draft) commentStatement() {
 	open := bytes.IndexByte(line, d.schema.Dialect.CommentChar) + 1
 	at := bytes.IndexByte(line[open:], d.schema.Preamble.Separator)
 	if at < 0 {
-		d.remark(bytes.TrimSpace(line[open:]))
+		d.remark(bytes.TrimSpace(line[open:]), d.schema.Preamble.Separator)
 		return
 	}
 	key, value := bytes.TrimSpace(line[open:open+at]), line[open+at+1:]
@@ -99,16 +122,27 @@ func (d *draft) textStatement() {
 		d.repairs.Add(d.row.Line, fmt.Sprintf("%s has no key and value, not used", cells.Quoted(line)))
 		return
 	}
-	value := bytes.TrimLeft(line[at+1:], " \t")
+	value := bytes.TrimLeft(bytes.TrimPrefix(line[at+1:], []byte{'\t'}), " ") // a further tab may be a damaged digit
+	d.tellKeys(line[at:])
 	d.addStatement(statement{key: bytes.TrimSpace(line[:at]), value: value, line: d.row.Line, start: from, at: from + len(line) - len(value)})
 }
 
-// remark tells a comment line without separator that begins with a known key.
-func (d *draft) remark(b []byte) {
+// tellKeys tells a key with its separator, as the schema writes it, within a
+// text: a line end may be lost. It may be part of the text too.
+func (d *draft) tellKeys(b []byte) {
+	d.eachKey(func(title string) {
+		if i := bytes.Index(b, []byte(title+string(d.schema.Preamble.Separator))); i > 0 && !partOfWord(b[i-1]) {
+			d.repairs.Add(d.row.Line, fmt.Sprintf("%q stands in the line of something else, not used", title))
+		}
+	})
+}
+
+// remark tells a line without separator that begins with a known key.
+func (d *draft) remark(b []byte, separator byte) {
 	d.eachKey(func(title string) {
 		n := len(title)
 		if len(b) > n && match.Equal(b[:n], title) && !partOfWord(b[n]) {
-			d.repairs.Add(d.row.Line, fmt.Sprintf("no %q behind %s, the fact is not used", string(d.schema.Preamble.Separator), cells.Quoted(b[:n])))
+			d.repairs.Add(d.row.Line, fmt.Sprintf("no %q behind %s, the fact is not used", string(separator), cells.Quoted(b[:n])))
 		}
 	})
 }

@@ -152,7 +152,11 @@ func (d *draft) keep(volume, value float64) {
 func (d *draft) keepOptional(at int) {
 	t := d.table
 	for i, column := range d.columns.optional {
-		if column < 0 || d.lost[i] {
+		if column < 0 {
+			continue
+		}
+		if d.lost[i] {
+			d.mergedFact(column)
 			continue
 		}
 		v := d.optional(column, i)
@@ -162,6 +166,16 @@ func (d *draft) keepOptional(at int) {
 		} else {
 			t.optional[i] = append(t.optional[i], v)
 		}
+	}
+}
+
+// mergedFact refuses a row that ends in a comment line with a fact. Where the
+// column is read, such a cell is no number.
+func (d *draft) mergedFact(column int) {
+	c := d.row.Cells[column]
+	b := d.scan.Bytes(c)
+	if i := d.secondFact(b); i >= 0 {
+		d.refuseRow(c.From+i, "", cells.Quoted(b[i:])+" stands in the line of a row", "a line end is lost; export the dump again")
 	}
 }
 
