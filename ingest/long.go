@@ -1,6 +1,7 @@
 package ingest
 
 import (
+	"bytes"
 	"fmt"
 	"slices"
 
@@ -82,6 +83,9 @@ func (l *longTable) tableRow() {
 	switch {
 	case row.Comment && l.head.rowLike():
 		l.head.repairs.Add(row.Line, rowLikeComment)
+		if l.damaged == 0 {
+			l.damaged = row.Line
+		}
 		return
 	case row.Comment:
 		if l.last != nil {
@@ -94,6 +98,9 @@ func (l *longTable) tableRow() {
 		}
 		return
 	case l.head.headerAgain():
+		return
+	case bytes.Equal(l.text.Body[row.From:row.To], l.head.columns.text):
+		l.head.refuseRow(row.From, "", "the header again", "the table stands twice, or another one follows; export the dump again")
 		return
 	}
 	name := []byte{}

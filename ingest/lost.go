@@ -22,6 +22,9 @@ func (l *longTable) tellLost() {
 	}
 	summed := c.volume >= 0 && c.fields[c.volume].Role == schemas.RoleIncrement
 	for _, d := range l.runs {
+		if len(l.runs) > 1 && !l.inFooter && l.head.unterminated() {
+			d.repairs.Add(l.row.Line, "a last row without line end, which may be one of this run")
+		}
 		switch {
 		case l.damaged == 0 || d.fault != nil:
 		case summed:
@@ -35,7 +38,11 @@ func (l *longTable) tellLost() {
 			continue
 		}
 		for _, d := range l.runs {
-			if d.rows >= MinReadings {
+			switch {
+			case d.rows < MinReadings || d.fault != nil:
+			case summed:
+				d.refuse(short.line, 0, -1, "run", fmt.Sprintf("run %s has only %s", cells.Quoted([]byte(short.name)), plural(short.rows, "row")), "its name may be damaged, and its increment would lack in every volume of another run; export the dump again")
+			default:
 				d.repairs.Add(short.line, fmt.Sprintf("run %s has only %s; if its name is damaged, they belong to another run", cells.Quoted([]byte(short.name)), plural(short.rows, "row")))
 			}
 		}

@@ -9,7 +9,10 @@ import (
 	"lastdrop/schemas"
 )
 
-const trailingDropped = "trailing delimiter dropped"
+const (
+	trailingDropped = "trailing delimiter dropped"
+	lastDropped     = "last row without line end dropped"
+)
 
 // sections reads the layouts single and stacked: each run is a preamble, a
 // header and rows, one below the other.
@@ -103,9 +106,13 @@ func (d *draft) take() {
 		switch {
 		case d.schema.Footer.Blank:
 			d.below()
+		case d.unterminated():
+			d.repairs.Add(d.row.Line, lastDropped)
 		case d.schema.Footer.Lines != schemas.UnusedLines:
 			d.markRow()
 		}
+	case d.row.Comment && d.unterminated():
+		d.repairs.Add(d.row.Line, lastDropped)
 	case d.row.Comment:
 		d.comment()
 	case d.row.Blank():
@@ -115,7 +122,7 @@ func (d *draft) take() {
 	case d.columns == nil:
 		d.above()
 	case d.unterminated():
-		d.repairs.Add(d.row.Line, "last row without line end dropped")
+		d.repairs.Add(d.row.Line, lastDropped)
 	default:
 		if !d.row.Ended {
 			d.repairs.Add(d.row.Line, "last row without line end kept")
@@ -222,7 +229,7 @@ func (d *draft) below() {
 	switch {
 	case lines == schemas.UnusedLines || d.row.Blank():
 	case d.unterminated():
-		d.repairs.Add(d.row.Line, "last row without line end dropped")
+		d.repairs.Add(d.row.Line, lastDropped)
 	case d.row.Comment:
 		if lines == schemas.CommentLines {
 			d.commentStatement()

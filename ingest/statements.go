@@ -5,9 +5,11 @@ import (
 	"fmt"
 	"slices"
 	"strings"
+	"unicode"
 
 	"lastdrop/ingest/cells"
 	"lastdrop/ingest/match"
+	"lastdrop/schemas"
 )
 
 // statement is one key with its value, wherever the dump has it: in a
@@ -50,6 +52,8 @@ func (d *draft) cellStatement() {
 		d.remark(key, d.schema.Dialect.Delimiter)
 		if d.endsNumber(key) {
 			d.repairs.Add(d.row.Line, fmt.Sprintf("%s has no value, not used; it may be the rest of the line above", cells.Quoted(key)))
+		} else if !d.knownKey(key) {
+			d.repairs.Add(d.row.Line, fmt.Sprintf("%s has no value, not used", cells.Quoted(key)))
 		}
 	}
 	d.strayQuote(d.row.Line, value)
@@ -96,7 +100,10 @@ func (d *draft) commentStatement() {
 	open := bytes.IndexByte(line, d.schema.Dialect.CommentChar) + 1
 	at := bytes.IndexByte(line[open:], d.schema.Preamble.Separator)
 	if at < 0 {
-		d.remark(bytes.TrimSpace(line[open:]), d.schema.Preamble.Separator)
+		text := bytes.TrimSpace(line[open:])
+		if d.remark(text, d.schema.Preamble.Separator); bytes.ContainsFunc(text, unicode.IsLetter) {
+			d.repairs.Add(d.row.Line, fmt.Sprintf("%s has no key and value, not used", cells.Quoted(text)))
+		}
 		return
 	}
 	key, value := bytes.TrimSpace(line[open:open+at]), line[open+at+1:]
@@ -131,7 +138,7 @@ func (d *draft) textStatement() {
 // text: a line end may be lost. It may be part of the text too.
 func (d *draft) tellKeys(b []byte) {
 	d.eachKey(func(title string) {
-		if i := bytes.Index(b, []byte(title+string(d.schema.Preamble.Separator))); i > 0 && !partOfWord(b[i-1]) {
+		if i := bytes.Index(b, []byte(title+string(d.schema.Preamble.Separator))); i > 0 && (!partOfWord(b[i-1]) || len(title) > 3) {
 			d.repairs.Add(d.row.Line, fmt.Sprintf("%q stands in the line of something else, not used", title))
 		}
 	})
@@ -149,6 +156,38 @@ func (d *draft) remark(b []byte, separator byte) {
 
 func partOfWord(c byte) bool {
 	return c-'0' < 10 || (c|0x20)-'a' < 26 || c == '_' || c >= 0x80
+}
+
+// mergedFirst notes a known key in the first line: it has taken the next one in.
+func (r *reader) mergedFirst() {
+	s := &r.schema.Recognise
+	stated := max(len(s.FirstLine), len(s.Begins))
+	text := r.text.Body[r.row.From:r.row.To]
+	if len(text) <= stated {
+		return
+	}
+	mark := r.schema.Dialect.Delimiter
+	if r.schema.Preamble.Lines != schemas.CellLines {
+		mark = r.schema.Preamble.Separator
+	}
+	d := &draft{reader: r}
+	d.eachKey(func(title string) {
+		if bytes.Contains(text[stated:], []byte(title+string(rune(mark)))) {
+			r.merged, r.first = fmt.Sprintf("%q stands in the first line, not used", title), r.row.Line
+		}
+	})
+}
+
+// heldKey is a known key that stands in another one as a word, "" for none.
+func (d *draft) heldKey(key []byte) string {
+	held := ""
+	d.eachKey(func(title string) {
+		i := bytes.Index(key, []byte(title))
+		if i >= 0 && (i == 0 || !partOfWord(key[i-1])) && (i+len(title) == len(key) || !partOfWord(key[i+len(title)])) && len(title) > len(held) {
+			held = title
+		}
+	})
+	return held
 }
 
 // secondFact returns where in a value another comment line with a known key
