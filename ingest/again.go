@@ -1,21 +1,39 @@
 package ingest
 
-import "bytes"
+import (
+	"bytes"
+	"fmt"
 
-// checkAgain refuses rows that stand twice where that can be seen: the same
-// time as in the row before, or the first row again when titrant has been
-// delivered since.
+	"lastdrop/ingest/plausible"
+	"lastdrop/schemas"
+)
+
+// checkAgain refuses a row that stands twice, where a time tells that it
+// cannot be another one.
 func (d *draft) checkAgain() {
-	text := d.text.Body[d.row.From:d.row.To]
-	switch {
-	case d.firstRow == nil:
-		d.firstRow = text
-	case bytes.Equal(text, d.rowBefore):
-		if d.columns.optional[timeColumn] >= 0 && !d.lost[timeColumn] && d.count > 0 {
-			d.refuseRow(d.row.From, "time", "the row before again, with the same time", "a row is doubled; export the dump again")
-		}
-	case d.count > 1 && bytes.Equal(text, d.firstRow) && d.table.readings[d.first].VolumeML < d.table.readings[d.end-1].VolumeML:
-		d.refuseRow(d.row.From, "", "the first row again", "a table stands twice, or another one follows; export the dump again")
+	text, column := d.text.Body[d.row.From:d.row.To], d.columns.optional[timeColumn]
+	if column >= 0 && d.count > 0 && d.fault == nil && bytes.Equal(text, d.rowBefore) && !d.missing(d.scan.Bytes(d.row.Cells[column])) {
+		d.refuseRow(d.row.From, "time", "the row before again, with the same time", "a row is doubled; export the dump again")
 	}
 	d.rowBefore = text
+}
+
+// checkFall refuses a volume that falls back to where the run began: another
+// table follows.
+func (d *draft) checkFall(volume float64) {
+	if d.count < 2 {
+		return
+	}
+	first, last := d.table.readings[d.first].VolumeML, d.table.readings[d.end-1].VolumeML
+	if volume <= first && first < last {
+		d.refuseRow(d.row.From, "volume", fmt.Sprintf("the volume falls from %s mL to %s mL, where the run began", plausible.Short(last), plausible.Short(volume)), "a table stands twice, or another one follows; export the dump again")
+	}
+}
+
+// checkBackwards refuses rows whose time runs backwards where increments are
+// summed: the rows are in another order, or of another run.
+func (d *draft) checkBackwards(column int, why string) {
+	if d.columns.fields[d.columns.volume].Role == schemas.RoleIncrement {
+		d.refuseRow(d.row.Cells[column].From, "time", why, "the rows are in another order or of another run, and the increments cannot be summed; export the dump again")
+	}
 }

@@ -165,7 +165,8 @@ func (p *polluter) closing() int {
 	}
 	last := len(p.body)
 	for i, line := range p.body {
-		if strings.HasPrefix(strings.Trim(line, string(rune(p.schema.Dialect.QuoteChar))), begin) {
+		rest, found := strings.CutPrefix(strings.Trim(line, string(rune(p.schema.Dialect.QuoteChar))), begin)
+		if found && (rest == "" || strings.ContainsRune(string([]byte{p.schema.Dialect.Delimiter, p.schema.Dialect.QuoteChar}), rune(rest[0]))) {
 			last = i
 		}
 	}
@@ -219,6 +220,9 @@ func (p *polluter) replaced(runes []rune, i int, c byte) func(*pollution) {
 	ends := func(i int) bool { return i < 0 || i >= len(runes) || runes[i] == '\r' || runes[i] == '\n' }
 	if ends(i) { // two lines become one
 		return structural
+	}
+	if c == p.schema.Dialect.Delimiter && p.schema.Dialect.Repeated { // blanks beside a cell part nothing
+		return oneCell
 	}
 	if c == '\n' && (ends(i+1) || ends(i-1)) || c == p.schema.Dialect.Delimiter && ends(i+1) {
 		return oneCell

@@ -16,7 +16,7 @@ func (p *polluter) lineDamage() {
 		}
 		what := fmt.Sprintf("line %d", i+1)
 		var more []func(*pollution)
-		if !p.rows[i] && i != p.head || p.rows[i] && !p.counts() {
+		if !p.rows[i] && i != p.head || p.rows[i] && (!p.counts() || !p.states(schemas.FactReadings) && (!p.rows[i-1] || !p.rows[i+1])) {
 			more = append(more, isApart)
 		}
 		p.lines("line lost", what, slices.Delete(slices.Clone(p.body), i, i+1), more...)

@@ -135,7 +135,7 @@ func compare(got, want []datum) difference {
 			d.lost = append(d.lost, g.key)
 		case known && w != "":
 			d.changed = append(d.changed, g.key)
-			if f := ratio(g.value, w); strings.HasPrefix(g.key, "reading") && f > 0 && (factor == 0 || math.Abs(f-factor) < 1e-9*f) {
+			if f := ratio(g.value, w); (strings.HasPrefix(g.key, "reading") || strings.HasPrefix(g.key, "number indicated")) && f > 0 && (factor == 0 || math.Abs(f-factor) < 1e-9*f) {
 				factor = f
 				d.scaled++
 			}

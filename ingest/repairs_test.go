@@ -44,7 +44,7 @@ func TestRepairsAreListed(t *testing.T) {
 		{"control characters", "# operator: A\x1b[31mB\u202e\n" + plainHead + rows, []string{"line 1: operator: characters that cannot be shown replaced"}},
 		{"long text", "# operator: " + strings.Repeat("ä", 201) + "\n" + plainHead + rows, []string{"line 1: operator: cut to 200 characters"}},
 		{"misspelt key", "# titrand: NaOH\n# solvent: 4\n" + plainHead + rows, []string{`line 1: "titrand" is nearly "titrant", kept as it is`}},
-		{"no separator", "# aliquot_ml = 10\n# a remark\n# aliquot_mlx\n" + strings.Replace(plainHead, "aliquot", "# aliquot", 1) + rows, []string{`line 1: no ":" behind "aliquot_ml", the fact is not used`, `line 5: "# aliquot_ml" is nearly "aliquot_ml", kept as it is`}},
+		{"no separator", "# aliquot_ml = 10\n# a remark\n# aliquot_mlx\n" + strings.Replace(plainHead, "aliquot", "# aliquot", 1) + rows, []string{`line 1: no ":" behind "aliquot_ml", the fact is not used`, `line 2: "a remark" has no key and value, not used`, `line 3: "aliquot_mlx" has no key and value, not used`, `line 5: "# aliquot_ml" is nearly "aliquot_ml", kept as it is`}},
 		{"kind without endpoint", "# indicated_kind: break\n" + plainHead + rows, []string{"line 1: the kind of an indicated endpoint that is not stated"}},
 	} {
 		t.Run(c.name, func(t *testing.T) {

@@ -115,6 +115,8 @@ func (d *draft) take() {
 		d.repairs.Add(d.row.Line, lastDropped)
 	case d.row.Comment:
 		d.comment()
+	case d.row.Blank() && d.unterminated() && d.row.To > d.row.From:
+		d.repairs.Add(d.row.Line, lastDropped)
 	case d.row.Blank():
 		if d.columns != nil {
 			d.blanks = append(d.blanks, d.row.Line)

@@ -101,7 +101,7 @@ func (d *draft) commentStatement() {
 	at := bytes.IndexByte(line[open:], d.schema.Preamble.Separator)
 	if at < 0 {
 		text := bytes.TrimSpace(line[open:])
-		if d.remark(text, d.schema.Preamble.Separator); bytes.ContainsFunc(text, unicode.IsLetter) {
+		if !d.remark(text, d.schema.Preamble.Separator) && bytes.ContainsFunc(text, unicode.IsLetter) {
 			d.repairs.Add(d.row.Line, fmt.Sprintf("%s has no key and value, not used", cells.Quoted(text)))
 		}
 		return
@@ -131,6 +131,9 @@ func (d *draft) textStatement() {
 	}
 	value := bytes.TrimLeft(bytes.TrimPrefix(line[at+1:], []byte{'\t'}), " ") // a further tab may be a damaged digit
 	d.tellKeys(line[at:])
+	if i := bytes.IndexByte(value, d.schema.Preamble.Separator); i >= 0 && (i+1 == len(value) || value[i+1]-'0' >= 10) { // a time of day has some too
+		d.repairs.Add(d.row.Line, fmt.Sprintf("the value of %s holds %q and was taken whole", cells.Quoted(bytes.TrimSpace(line[:at])), string(d.schema.Preamble.Separator)))
+	}
 	d.addStatement(statement{key: bytes.TrimSpace(line[:at]), value: value, line: d.row.Line, start: from, at: from + len(line) - len(value)})
 }
 
@@ -138,20 +141,51 @@ func (d *draft) textStatement() {
 // text: a line end may be lost. It may be part of the text too.
 func (d *draft) tellKeys(b []byte) {
 	d.eachKey(func(title string) {
-		if i := bytes.Index(b, []byte(title+string(d.schema.Preamble.Separator))); i > 0 && (!partOfWord(b[i-1]) || len(title) > 3) {
+		if i := keyAt(b, title, d.schema.Preamble.Separator); i > 0 && (!partOfWord(b[i-1]) || len(title) > 3) {
 			d.repairs.Add(d.row.Line, fmt.Sprintf("%q stands in the line of something else, not used", title))
 		}
 	})
 }
 
+// keyAt is where a key with its separator stands in a text, -1 for nowhere.
+// Blanks may stand between them.
+func keyAt(b []byte, title string, separator byte) int {
+	for from := 0; ; {
+		i := bytes.Index(b[from:], []byte(title))
+		if i < 0 {
+			return -1
+		}
+		from += i + len(title)
+		if rest := bytes.TrimLeft(b[from:], " "); len(rest) > 0 && rest[0] == separator {
+			return from - len(title)
+		}
+	}
+}
+
+// splitKey is a known key within which the separator of a statement seems to
+// stand, "" for none.
+func (d *draft) splitKey(s *statement) string {
+	joined, split := strings.ToLower(string(s.key)+string(s.value)), ""
+	d.eachKey(func(title string) {
+		for n := len(title) - 1; n <= len(title)+1 && len(title) > 3; n++ {
+			if len(s.key) < len(title) && n <= len(joined) && changes(joined[:n], strings.ToLower(title)) <= 1 {
+				split = title
+			}
+		}
+	})
+	return split
+}
+
 // remark tells a line without separator that begins with a known key.
-func (d *draft) remark(b []byte, separator byte) {
+func (d *draft) remark(b []byte, separator byte) (told bool) {
 	d.eachKey(func(title string) {
 		n := len(title)
 		if len(b) > n && match.Equal(b[:n], title) && !partOfWord(b[n]) {
 			d.repairs.Add(d.row.Line, fmt.Sprintf("no %q behind %s, the fact is not used", string(separator), cells.Quoted(b[:n])))
+			told = true
 		}
 	})
+	return told
 }
 
 func partOfWord(c byte) bool {
@@ -172,7 +206,7 @@ func (r *reader) mergedFirst() {
 	}
 	d := &draft{reader: r}
 	d.eachKey(func(title string) {
-		if bytes.Contains(text[stated:], []byte(title+string(rune(mark)))) {
+		if keyAt(text[stated:], title, mark) >= 0 {
 			r.merged, r.first = fmt.Sprintf("%q stands in the first line, not used", title), r.row.Line
 		}
 	})

@@ -130,6 +130,7 @@ func (d *draft) special() {
 func (d *draft) keep(volume, value float64) {
 	t := d.table
 	at := len(t.readings)
+	d.checkFall(volume)
 	if d.schema.SameVolume == schemas.SameLast && d.count > 0 && t.readings[d.end-1].VolumeML == volume {
 		at = d.end - 1
 		t.readings[at] = Reading{VolumeML: volume, Value: value, Line: d.row.Line}
@@ -239,7 +240,7 @@ func (d *draft) mayBeShifted() bool {
 		return false
 	}
 	f := d.columns.fields[last]
-	return f == nil || f.Empty != schemas.EmptyRefused || !f.Role.IsReading() && f.Role != schemas.RoleVolume
+	return f == nil || d.schema.Layout == schemas.Wide || f.Empty != schemas.EmptyRefused || !f.Role.IsReading() && f.Role != schemas.RoleVolume
 }
 
 // checkNumber: a column that counts the rows must count up by one, or a row is

@@ -207,6 +207,9 @@ func (d *wideRun) wideRow() {
 	}
 	switch {
 	case empty && d.ended == 0:
+		d.rows++ // a row lost at the end of the run is not in the count of the rows
+		d.checkNumber()
+		d.rows--
 		d.ended = d.row.Line
 	case empty:
 	case d.ended > 0:
