@@ -9,11 +9,17 @@ import (
 )
 
 // checkAgain refuses a row that stands twice, where a time tells that it
-// cannot be another one.
+// cannot be another one, and the first row once titrant has been delivered.
 func (d *draft) checkAgain() {
 	text, column := d.text.Body[d.row.From:d.row.To], d.columns.optional[timeColumn]
 	if column >= 0 && d.count > 0 && d.fault == nil && bytes.Equal(text, d.rowBefore) && !d.missing(d.scan.Bytes(d.row.Cells[column])) {
 		d.refuseRow(d.row.From, "time", "the row before again, with the same time", "a row is doubled; export the dump again")
+	}
+	switch {
+	case d.rowFirst == nil:
+		d.rowFirst = text
+	case d.count > 1 && d.fault == nil && bytes.Equal(text, d.rowFirst) && !bytes.Equal(text, d.rowBefore) && d.table.readings[d.first].VolumeML < d.table.readings[d.end-1].VolumeML:
+		d.refuseRow(d.row.From, "", "the first row again", "a table stands twice, or another one follows; export the dump again")
 	}
 	d.rowBefore = text
 }

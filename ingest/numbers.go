@@ -153,7 +153,7 @@ func (d *draft) remarked() {
 	if c := d.schema.Dialect.CommentChar; c != 0 && bytes.IndexByte(b, c) >= 0 {
 		d.repairs.Add(d.row.Line, fmt.Sprintf("%q in a remark; it may be a line of its own", string(rune(c))))
 	}
-	if bytes.Contains(b, []byte("\ufeff")) {
+	if bytes.Contains(b, []byte("\ufeff")) || bytes.Contains(b, []byte("ï»¿")) {
 		d.repairs.Add(d.row.Line, "a byte order mark in a remark; the dump may be joined of two")
 	}
 	text, _, _ := cells.Clean(b)

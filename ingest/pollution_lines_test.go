@@ -85,7 +85,7 @@ func (p *polluter) decimalMarks() {
 	if own == "," {
 		other = "."
 	}
-	swap := func(kind, what string, keep func(line, at int) bool) {
+	swap := func(kind, what string, keep func(line, at int) bool, more ...func(*pollution)) {
 		lines := slices.Clone(p.body)
 		for i := range lines {
 			b := []byte(lines[i])
@@ -97,7 +97,7 @@ func (p *polluter) decimalMarks() {
 			lines[i] = string(b)
 		}
 		if !slices.Equal(lines, p.body) {
-			p.lines(kind, what, lines)
+			p.lines(kind, what, lines, more...)
 		}
 	}
 	swap("decimal mark, all", "everywhere", func(int, int) bool { return true })
@@ -105,7 +105,11 @@ func (p *polluter) decimalMarks() {
 	for i := range p.body {
 		for j := range p.body[i] {
 			if string(p.body[i][j]) == own && p.thin(10) {
-				swap("decimal mark, one", fmt.Sprintf("line %d byte %d", i+1, j+1), func(line, at int) bool { return line == i && at == j })
+				var more []func(*pollution)
+				if !p.rows[i] && other[0] != p.schema.Dialect.Delimiter {
+					more = append(more, structural) // in a text nobody can see it, in a number anybody
+				}
+				swap("decimal mark, one", fmt.Sprintf("line %d byte %d", i+1, j+1), func(line, at int) bool { return line == i && at == j }, more...)
 			}
 		}
 	}

@@ -20,6 +20,11 @@ const (
 	minIntact   = 0.95
 )
 
+// knownUntold are the counts of damage that is misread in silence, by dump and
+// kind. The dumps of shipped schemas have no place here. The list must only
+// shrink: a fault that is mended leaves it.
+var knownUntold = map[string]int{}
+
 // tally counts the verdicts of one kind of damage.
 type tally map[verdict]int
 
@@ -71,14 +76,21 @@ func TestPollution(t *testing.T) {
 			}
 			if j.verdict == silent {
 				fault := c.name + ", " + p.kind
-				if faults[fault]++; faults[fault] <= 3 {
-					t.Errorf("%s, %s: misread in silence: %s", fault, p.what, j.why)
+				if faults[fault]++; faults[fault] <= knownUntold[fault]+3 {
+					t.Logf("%s, %s: misread in silence: %s", fault, p.what, j.why)
 				}
 			}
 		}).all()
 	}
 	for _, fault := range slices.Sorted(maps.Keys(faults)) {
-		t.Logf("%s: %d misread in silence", fault, faults[fault])
+		if known := knownUntold[fault]; faults[fault] > known {
+			t.Errorf("%s: %d misread in silence, %d known", fault, faults[fault], known)
+		}
+	}
+	for fault, known := range knownUntold {
+		if faults[fault] < known && !*thorough {
+			t.Errorf("%s: %d misread in silence, %d known; shorten the list", fault, faults[fault], known)
+		}
 	}
 	report(t, "by kind", byKind)
 	report(t, "by dump", byDump)

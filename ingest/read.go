@@ -167,6 +167,7 @@ type draft struct {
 	cellPerCM    *float64 // constant of the conductivity cell
 	inFooter     bool
 	wide         *wideTable // layout wide, above its table
+	rowFirst     []byte     // text of the first row
 	rowBefore    []byte     // text of the row before
 	blanks       []int      // lines skipped since the last row of the table
 	decimalMarks int        // numbers with a decimal mark read so far
@@ -224,7 +225,7 @@ func (d *draft) finish() {
 	d.table.fill(d)
 	d.convert()
 	d.judge()
-	if body := d.text.Body; d.text.Cut && (len(body) == 0 || body[len(body)-1] == '\n' || body[len(body)-1] == '\r') {
+	if d.text.Cut {
 		d.repairs.Add(d.lastLine, "the dump ends within a character and is cut off")
 	}
 	d.run.Repairs = d.repairs.Lines()

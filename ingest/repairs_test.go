@@ -32,7 +32,7 @@ func TestRepairsAreListed(t *testing.T) {
 		{"blank lines in the table", plainHead + "0,3\n\n1,3\n,\n \n2,3\n3,3\n4,3\n", []string{"line 5: blank line in the table skipped", "lines 7 to 8: blank line in the table skipped"}},
 		{"blank lines around the table", "\n" + strings.Replace(plainHead, "volume", "\n\nvolume", 1) + rows + "\n\n", nil},
 		{"last row without line end", plainHead + rows + "2.5,3.9", []string{"line 9: last row without line end dropped"}},
-		{"cut off in the middle of a character", plainHead + rows + "2.5,3.9\xe2\x88", []string{"line 9: last row without line end dropped"}},
+		{"cut off in the middle of a character", plainHead + rows + "2.5,3.9\xe2\x88", []string{"line 8: the dump ends within a character and is cut off", "line 9: last row without line end dropped"}},
 		{"column not known", strings.Replace(plainHead, "pH", "pH,\"stir\"\"rer\"", 1) + strings.ReplaceAll(rows, "\n", ",on\n"), []string{`line 3: column "stir\"rer" not used`}},
 		{"comment below the header", plainHead + rows + "# sample: other\n", []string{"line 9: comment below the header not used"}},
 		{"fact stated again", "# sample: HCL-0051\n" + plainHead + rows, []string{"line 2: sample stated again"}},

@@ -131,8 +131,8 @@ func (d *draft) textStatement() {
 	}
 	value := bytes.TrimLeft(bytes.TrimPrefix(line[at+1:], []byte{'\t'}), " ") // a further tab may be a damaged digit
 	d.tellKeys(line[at:])
-	if i := bytes.IndexByte(value, d.schema.Preamble.Separator); i >= 0 && (i+1 == len(value) || value[i+1]-'0' >= 10) { // a time of day has some too
-		d.repairs.Add(d.row.Line, fmt.Sprintf("the value of %s holds %q and was taken whole", cells.Quoted(bytes.TrimSpace(line[:at])), string(d.schema.Preamble.Separator)))
+	if i, n := bytes.IndexByte(value, d.schema.Preamble.Separator), bytes.Count(value, []byte{d.schema.Preamble.Separator}); i >= 0 && (i+1 == len(value) || value[i+1]-'0' >= 10) { // a time of day has some too
+		d.repairs.Add(d.row.Line, fmt.Sprintf("the value of %s holds %q (%d) and was taken whole", cells.Quoted(bytes.TrimSpace(line[:at])), string(d.schema.Preamble.Separator), n))
 	}
 	d.addStatement(statement{key: bytes.TrimSpace(line[:at]), value: value, line: d.row.Line, start: from, at: from + len(line) - len(value)})
 }
@@ -167,8 +167,8 @@ func keyAt(b []byte, title string, separator byte) int {
 func (d *draft) splitKey(s *statement) string {
 	joined, split := strings.ToLower(string(s.key)+string(s.value)), ""
 	d.eachKey(func(title string) {
-		for n := len(title) - 1; n <= len(title)+1 && len(title) > 3; n++ {
-			if len(s.key) < len(title) && n <= len(joined) && changes(joined[:n], strings.ToLower(title)) <= 1 {
+		for n := len(title) - 2; n <= len(title)+1 && len(title) > 3; n++ {
+			if len(s.key) < len(title) && n <= len(joined) && changes(joined[:n], strings.ToLower(title)) <= 1+len(title)/8 {
 				split = title
 			}
 		}

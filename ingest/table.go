@@ -232,11 +232,10 @@ func (d *draft) shape(width int) bool {
 }
 
 // mayBeShifted reports whether a delimiter too many may have moved the cells of
-// a row into the columns beside their own: the last one has a text and may be
-// empty elsewhere.
+// a row into the columns beside their own: the last one may be empty.
 func (d *draft) mayBeShifted() bool {
 	last := len(d.row.Cells) - 1
-	if last != d.columns.width-1 || d.row.Cells[last].Empty() {
+	if last != d.columns.width-1 {
 		return false
 	}
 	f := d.columns.fields[last]
