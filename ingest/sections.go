@@ -212,6 +212,9 @@ func (d *draft) parted() bool {
 	if c.volume < 0 || c.reading < 0 || len(d.row.Cells) <= max(c.volume, c.reading) {
 		return true
 	}
+	if c.status >= 0 && len(d.row.Cells) == c.width && d.knownStatus(d.scan.Bytes(d.row.Cells[c.status])) {
+		return false
+	}
 	numbers := 0
 	for _, i := range []int{c.volume, c.reading} {
 		b := d.scan.Bytes(d.row.Cells[i])
@@ -223,6 +226,16 @@ func (d *draft) parted() bool {
 		}
 	}
 	return numbers == 0
+}
+
+// knownStatus reports whether a text is one that the schema knows for a row.
+func (d *draft) knownStatus(b []byte) bool {
+	for _, v := range d.columns.fields[d.columns.status].Values {
+		if len(b) > 0 && match.Equal(b, v.Text) {
+			return true
+		}
+	}
+	return false
 }
 
 // below reads a row of the footer.

@@ -44,6 +44,7 @@ func (d *draft) cellStatement() {
 	}
 	row := d.row.Cells
 	if len(row) < 2 || row[0].Empty() {
+		d.restOfNumber(d.text.Body[d.row.From:d.row.To])
 		d.repairs.Add(d.row.Line, fmt.Sprintf("%s has no key and value, not used", cells.Quoted(d.text.Body[d.row.From:d.row.To])))
 		return
 	}
@@ -80,6 +81,19 @@ func (d *draft) endsNumber(b []byte) bool {
 	return ends
 }
 
+// restOfNumber refuses a line that goes on with the number that ends the line
+// above: a number cut in two is another number.
+func (d *draft) restOfNumber(rest []byte) {
+	if len(d.statements) == 0 || len(rest) == 0 {
+		return
+	}
+	s := d.statements[len(d.statements)-1]
+	digit := func(c byte) bool { return c-'0' < 10 || c == d.schema.Dialect.DecimalChar }
+	if n := len(s.value); s.line == d.row.Line-1 && n > 0 && digit(s.value[n-1]) && digit(rest[0]) && d.knownKey(s.key) {
+		d.refuseRow(d.row.From, "", cells.Quoted(rest)+" may be the rest of the number in the line above", "a line is broken in two; export the dump again")
+	}
+}
+
 // strayQuote tells a quote within an unquoted text, which is kept: it may be
 // the rest of a damaged pair.
 func (d *draft) strayQuote(line int, c cells.Cell) {
@@ -112,6 +126,7 @@ func (d *draft) commentStatement() {
 	if i := d.secondFact(value); i >= 0 {
 		d.refuseRow(begin+i, "", cells.Quoted(value[i:])+" stands in the line of another fact", "a line end is lost; export the dump again")
 	}
+	d.tellKeys(value)
 	d.addStatement(statement{key: key, value: rest, line: d.row.Line, start: from, at: begin + len(value) - len(rest)})
 }
 
@@ -126,6 +141,7 @@ func (d *draft) textStatement() {
 	}
 	at := bytes.IndexByte(line, d.schema.Preamble.Separator)
 	if at < 1 {
+		d.restOfNumber(line)
 		d.repairs.Add(d.row.Line, fmt.Sprintf("%s has no key and value, not used", cells.Quoted(line)))
 		return
 	}
@@ -217,7 +233,7 @@ func (d *draft) heldKey(key []byte) string {
 	held := ""
 	d.eachKey(func(title string) {
 		i := bytes.Index(key, []byte(title))
-		if i >= 0 && (i == 0 || !partOfWord(key[i-1])) && (i+len(title) == len(key) || !partOfWord(key[i+len(title)])) && len(title) > len(held) {
+		if i >= 0 && (i == 0 || !partOfWord(key[i-1])) && (i+len(title) == len(key) || !partOfWord(key[i+len(title)]) || key[i+len(title)]-'0' < 10) && len(title) > len(held) {
 			held = title
 		}
 	})
