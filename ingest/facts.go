@@ -252,6 +252,12 @@ func (d *draft) otherFacts() {
 			d.repairs.Add(s.line, cells.Quoted(s.key)+" by itself is no fact, kept as it is")
 		} else if near != "" {
 			d.repairs.Add(s.line, fmt.Sprintf("%s is nearly %q, kept as it is", cells.Quoted(s.key), near))
+		} else if held := d.heldKey(s.key); held != "" && d.schema.Preamble.Lines != schemas.CellLines {
+			d.repairs.Add(s.line, fmt.Sprintf("%s holds %q, kept as it is", cells.Quoted(s.key), held))
+		} else if split := d.splitKey(s); split != "" {
+			d.repairs.Add(s.line, fmt.Sprintf("%s and its value look like %q, kept as they are", cells.Quoted(s.key), split))
+		} else if len(s.key) > 0 && s.key[0]-'0' < 10 && d.schema.Preamble.Lines != schemas.CellLines {
+			d.repairs.Add(s.line, cells.Quoted(s.key)+" may be the rest of the line above, kept as it is")
 		} else if d.schema.Preamble.Lines == schemas.CellLines {
 			d.repairs.Add(s.line, fmt.Sprintf("%s is not in schema %s, kept as it is", cells.Quoted(s.key), d.schema.Name))
 		}

@@ -32,6 +32,7 @@ type columns struct {
 	limits   []*plausible.Limit // by column, of its quantity
 	signal   Signal
 	width    int
+	tail     int // empty cells behind the last title
 	line     int
 	text     []byte // all its rows as they stand, to know them again
 	rows     int
@@ -76,11 +77,13 @@ func (d *draft) bind() {
 
 // bindTitles makes the columns of the header at hand, none of them bound.
 func (d *draft) bindTitles() *columns {
+	before := len(d.row.Cells)
 	if d.row.DropEmptyTail(1) {
 		d.repairs.Add(d.row.Line, trailingDropped)
 	}
 	titles, rows := match.Titles(d.schema, &d.scan, &d.row)
 	d.columns = newColumns(titles, &d.row, rows)
+	d.columns.tail = before - len(d.row.Cells)
 	d.lastLine = d.row.Line
 	d.blanks = d.blanks[:0]
 	return d.columns

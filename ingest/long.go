@@ -1,6 +1,7 @@
 package ingest
 
 import (
+	"bytes"
 	"fmt"
 	"slices"
 
@@ -95,6 +96,9 @@ func (l *longTable) tableRow() {
 		}
 		return
 	case l.head.headerAgain():
+		return
+	case bytes.Equal(l.text.Body[row.From:row.To], l.head.columns.text):
+		l.head.refuseRow(row.From, "", "the header again", "the table stands twice, or another one follows; export the dump again")
 		return
 	}
 	name := []byte{}

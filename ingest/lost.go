@@ -59,6 +59,9 @@ func (l *longTable) tellLost() {
 		}
 	}
 	for _, d := range l.runs {
+		if len(l.runs) > 1 && !l.inFooter && l.head.unterminated() {
+			d.repairs.Add(l.row.Line, "a last row without line end, which may be one of this run")
+		}
 		if d.fault != nil || d.rows < MinReadings {
 			continue
 		}

@@ -1,6 +1,7 @@
 package ingest
 
 import (
+	"bytes"
 	"fmt"
 	"math"
 
@@ -149,6 +150,12 @@ func (d *draft) remarked() {
 		d.repairs.Add(d.row.Line, fmt.Sprintf("more than %d remarks, not used", maxRemarks))
 		return
 	}
+	if c := d.schema.Dialect.CommentChar; c != 0 && bytes.IndexByte(b, c) >= 0 {
+		d.repairs.Add(d.row.Line, fmt.Sprintf("%q in a remark; it may be a line of its own", string(rune(c))))
+	}
+	if bytes.Contains(b, []byte("\ufeff")) || bytes.Contains(b, []byte("ï»¿")) {
+		d.repairs.Add(d.row.Line, "a byte order mark in a remark; the dump may be joined of two")
+	}
 	text, _, _ := cells.Clean(b)
 	d.remarks = append(d.remarks, Remark{d.row.Line, text})
 }
@@ -168,6 +175,7 @@ func (d *draft) optional(column, which int) float64 {
 	if which == timeColumn && why == "" {
 		if d.count > 0 && v < d.lastTimeS {
 			why = fmt.Sprintf("%v s after %v s, time runs backwards", v, d.lastTimeS)
+			d.checkBackwards(column, why)
 		}
 		d.lastTimeS = v
 	}

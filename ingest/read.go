@@ -75,6 +75,8 @@ type reader struct {
 	problems []*schemas.Problem
 	begun    int      // runs begun so far
 	trailing int      // line of the first line when it has trailing delimiters
+	merged   string   // what the first line has of another one, "" for nothing
+	first    int      // line of that
 	drafts   []*draft // every run, in the order of the dump
 }
 
@@ -84,6 +86,9 @@ func (r *reader) begin(line int) *draft {
 	d := &draft{reader: r, table: &r.common, number: r.begun, line: line, first: len(r.common.readings), end: len(r.common.readings)}
 	if r.begun == 1 && r.trailing > 0 {
 		d.repairs.Add(r.trailing, trailingDropped)
+	}
+	if r.begun == 1 && r.merged != "" {
+		d.repairs.Add(r.first, r.merged)
 	}
 	return d
 }
@@ -107,6 +112,7 @@ func (r *reader) passFirstLine() {
 		if r.row.DropEmptyTail(1) {
 			r.trailing = r.row.Line
 		}
+		r.mergedFirst()
 		return
 	}
 }
@@ -161,6 +167,8 @@ type draft struct {
 	cellPerCM    *float64 // constant of the conductivity cell
 	inFooter     bool
 	wide         *wideTable // layout wide, above its table
+	rowFirst     []byte     // text of the first row
+	rowBefore    []byte     // text of the row before
 	blanks       []int      // lines skipped since the last row of the table
 	decimalMarks int        // numbers with a decimal mark read so far
 	name         string     // in the column that names the run; layout long
@@ -217,6 +225,9 @@ func (d *draft) finish() {
 	d.table.fill(d)
 	d.convert()
 	d.judge()
+	if d.text.Cut {
+		d.repairs.Add(d.lastLine, "the dump ends within a character and is cut off")
+	}
 	d.run.Repairs = d.repairs.Lines()
 }
 

@@ -32,7 +32,7 @@ func TestRepairsAreListed(t *testing.T) {
 		{"blank lines in the table", plainHead + "0,3\n\n1,3\n,\n \n2,3\n3,3\n4,3\n", []string{"line 5: blank line in the table skipped", "lines 7 to 8: blank line in the table skipped"}},
 		{"blank lines around the table", "\n" + strings.Replace(plainHead, "volume", "\n\nvolume", 1) + rows + "\n\n", nil},
 		{"last row without line end", plainHead + rows + "2.5,3.9", []string{"line 9: last row without line end dropped"}},
-		{"cut off in the middle of a character", plainHead + rows + "2.5,3.9\xe2\x88", []string{"line 9: last row without line end dropped"}},
+		{"cut off in the middle of a character", plainHead + rows + "2.5,3.9\xe2\x88", []string{"line 8: the dump ends within a character and is cut off", "line 9: last row without line end dropped"}},
 		{"column not known", strings.Replace(plainHead, "pH", "pH,\"stir\"\"rer\"", 1) + strings.ReplaceAll(rows, "\n", ",on\n"), []string{`line 3: column "stir\"rer" not used`}},
 		{"comment below the header", plainHead + rows + "# sample: other\n", []string{"line 9: comment below the header not used"}},
 		{"fact stated again", "# sample: HCL-0051\n" + plainHead + rows, []string{"line 2: sample stated again"}},
@@ -44,7 +44,7 @@ func TestRepairsAreListed(t *testing.T) {
 		{"control characters", "# operator: A\x1b[31mB\u202e\n" + plainHead + rows, []string{"line 1: operator: characters that cannot be shown replaced"}},
 		{"long text", "# operator: " + strings.Repeat("ä", 201) + "\n" + plainHead + rows, []string{"line 1: operator: cut to 200 characters"}},
 		{"misspelt key", "# titrand: NaOH\n# solvent: 4\n" + plainHead + rows, []string{`line 1: "titrand" is nearly "titrant", kept as it is`}},
-		{"no separator", "# aliquot_ml = 10\n# a remark\n# aliquot_mlx\n" + strings.Replace(plainHead, "aliquot", "# aliquot", 1) + rows, []string{`line 1: no ":" behind "aliquot_ml", the fact is not used`, `line 5: "# aliquot_ml" is nearly "aliquot_ml", kept as it is`}},
+		{"no separator", "# aliquot_ml = 10\n# a remark\n# aliquot_mlx\n" + strings.Replace(plainHead, "aliquot", "# aliquot", 1) + rows, []string{`line 1: no ":" behind "aliquot_ml", the fact is not used`, `line 2: "a remark" has no key and value, not used`, `line 3: "aliquot_mlx" has no key and value, not used`, `line 5: "# aliquot_ml" is nearly "aliquot_ml", kept as it is`}},
 		{"kind without endpoint", "# indicated_kind: break\n" + plainHead + rows, []string{"line 1: the kind of an indicated endpoint that is not stated"}},
 	} {
 		t.Run(c.name, func(t *testing.T) {

@@ -9,7 +9,10 @@ import (
 	"lastdrop/schemas"
 )
 
-const trailingDropped = "trailing delimiter dropped"
+const (
+	trailingDropped = "trailing delimiter dropped"
+	lastDropped     = "last row without line end dropped"
+)
 
 // sections reads the layouts single and stacked: each run is a preamble, a
 // header and rows, one below the other.
@@ -103,11 +106,17 @@ func (d *draft) take() {
 		switch {
 		case d.schema.Footer.Blank:
 			d.below()
+		case d.unterminated():
+			d.repairs.Add(d.row.Line, lastDropped)
 		case d.schema.Footer.Lines != schemas.UnusedLines:
 			d.markRow()
 		}
+	case d.row.Comment && d.unterminated():
+		d.repairs.Add(d.row.Line, lastDropped)
 	case d.row.Comment:
 		d.comment()
+	case d.row.Blank() && d.unterminated() && d.row.To > d.row.From:
+		d.repairs.Add(d.row.Line, lastDropped)
 	case d.row.Blank():
 		if d.columns != nil {
 			d.blanks = append(d.blanks, d.row.Line)
@@ -115,7 +124,7 @@ func (d *draft) take() {
 	case d.columns == nil:
 		d.above()
 	case d.unterminated():
-		d.repairs.Add(d.row.Line, "last row without line end dropped")
+		d.repairs.Add(d.row.Line, lastDropped)
 	default:
 		if !d.row.Ended {
 			d.repairs.Add(d.row.Line, "last row without line end kept")
@@ -195,6 +204,9 @@ func (d *draft) parted() bool {
 	if c.volume < 0 || c.reading < 0 || len(d.row.Cells) <= max(c.volume, c.reading) {
 		return true
 	}
+	if c.status >= 0 && len(d.row.Cells) == c.width && d.knownStatus(d.scan.Bytes(d.row.Cells[c.status])) {
+		return false
+	}
 	numbers := 0
 	for _, i := range []int{c.volume, c.reading} {
 		b := d.scan.Bytes(d.row.Cells[i])
@@ -208,13 +220,23 @@ func (d *draft) parted() bool {
 	return numbers == 0
 }
 
+// knownStatus reports whether a text is one that the schema knows for a row.
+func (d *draft) knownStatus(b []byte) bool {
+	for _, v := range d.columns.fields[d.columns.status].Values {
+		if len(b) > 0 && match.Equal(b, v.Text) {
+			return true
+		}
+	}
+	return false
+}
+
 // below reads a row of the footer.
 func (d *draft) below() {
 	lines := d.schema.Footer.Lines
 	switch {
 	case lines == schemas.UnusedLines || d.row.Blank():
 	case d.unterminated():
-		d.repairs.Add(d.row.Line, "last row without line end dropped")
+		d.repairs.Add(d.row.Line, lastDropped)
 	case d.row.Comment:
 		if lines == schemas.CommentLines {
 			d.commentStatement()

@@ -5,9 +5,11 @@ import (
 	"fmt"
 	"slices"
 	"strings"
+	"unicode"
 
 	"lastdrop/ingest/cells"
 	"lastdrop/ingest/match"
+	"lastdrop/schemas"
 )
 
 // statement is one key with its value, wherever the dump has it: in a
@@ -42,6 +44,7 @@ func (d *draft) cellStatement() {
 	}
 	row := d.row.Cells
 	if len(row) < 2 || row[0].Empty() {
+		d.restOfNumber(d.text.Body[d.row.From:d.row.To])
 		d.repairs.Add(d.row.Line, fmt.Sprintf("%s has no key and value, not used", cells.Quoted(d.text.Body[d.row.From:d.row.To])))
 		return
 	}
@@ -50,6 +53,8 @@ func (d *draft) cellStatement() {
 		d.remark(key, d.schema.Dialect.Delimiter)
 		if d.endsNumber(key) {
 			d.repairs.Add(d.row.Line, fmt.Sprintf("%s has no value, not used; it may be the rest of the line above", cells.Quoted(key)))
+		} else if !d.knownKey(key) {
+			d.repairs.Add(d.row.Line, fmt.Sprintf("%s has no value, not used", cells.Quoted(key)))
 		}
 	}
 	d.strayQuote(d.row.Line, value)
@@ -76,6 +81,19 @@ func (d *draft) endsNumber(b []byte) bool {
 	return ends
 }
 
+// restOfNumber refuses a line that goes on with the number that ends the line
+// above: a number cut in two is another number.
+func (d *draft) restOfNumber(rest []byte) {
+	if len(d.statements) == 0 || len(rest) == 0 {
+		return
+	}
+	s := d.statements[len(d.statements)-1]
+	digit := func(c byte) bool { return c-'0' < 10 || c == d.schema.Dialect.DecimalChar }
+	if n := len(s.value); s.line == d.row.Line-1 && n > 0 && digit(s.value[n-1]) && digit(rest[0]) && d.knownKey(s.key) {
+		d.refuseRow(d.row.From, "", cells.Quoted(rest)+" may be the rest of the number in the line above", "a line is broken in two; export the dump again")
+	}
+}
+
 // strayQuote tells a quote within an unquoted text, which is kept: it may be
 // the rest of a damaged pair.
 func (d *draft) strayQuote(line int, c cells.Cell) {
@@ -96,7 +114,10 @@ func (d *draft) commentStatement() {
 	open := bytes.IndexByte(line, d.schema.Dialect.CommentChar) + 1
 	at := bytes.IndexByte(line[open:], d.schema.Preamble.Separator)
 	if at < 0 {
-		d.remark(bytes.TrimSpace(line[open:]), d.schema.Preamble.Separator)
+		text := bytes.TrimSpace(line[open:])
+		if !d.remark(text, d.schema.Preamble.Separator) && bytes.ContainsFunc(text, unicode.IsLetter) {
+			d.repairs.Add(d.row.Line, fmt.Sprintf("%s has no key and value, not used", cells.Quoted(text)))
+		}
 		return
 	}
 	key, value := bytes.TrimSpace(line[open:open+at]), line[open+at+1:]
@@ -105,6 +126,7 @@ func (d *draft) commentStatement() {
 	if i := d.secondFact(value); i >= 0 {
 		d.refuseRow(begin+i, "", cells.Quoted(value[i:])+" stands in the line of another fact", "a line end is lost; export the dump again")
 	}
+	d.tellKeys(value)
 	d.addStatement(statement{key: key, value: rest, line: d.row.Line, start: from, at: begin + len(value) - len(rest)})
 }
 
@@ -119,11 +141,15 @@ func (d *draft) textStatement() {
 	}
 	at := bytes.IndexByte(line, d.schema.Preamble.Separator)
 	if at < 1 {
+		d.restOfNumber(line)
 		d.repairs.Add(d.row.Line, fmt.Sprintf("%s has no key and value, not used", cells.Quoted(line)))
 		return
 	}
 	value := bytes.TrimLeft(bytes.TrimPrefix(line[at+1:], []byte{'\t'}), " ") // a further tab may be a damaged digit
 	d.tellKeys(line[at:])
+	if i, n := bytes.IndexByte(value, d.schema.Preamble.Separator), bytes.Count(value, []byte{d.schema.Preamble.Separator}); i >= 0 && (i+1 == len(value) || value[i+1]-'0' >= 10) { // a time of day has some too
+		d.repairs.Add(d.row.Line, fmt.Sprintf("the value of %s holds %q (%d) and was taken whole", cells.Quoted(bytes.TrimSpace(line[:at])), string(d.schema.Preamble.Separator), n))
+	}
 	d.addStatement(statement{key: bytes.TrimSpace(line[:at]), value: value, line: d.row.Line, start: from, at: from + len(line) - len(value)})
 }
 
@@ -131,24 +157,87 @@ func (d *draft) textStatement() {
 // text: a line end may be lost. It may be part of the text too.
 func (d *draft) tellKeys(b []byte) {
 	d.eachKey(func(title string) {
-		if i := bytes.Index(b, []byte(title+string(d.schema.Preamble.Separator))); i > 0 && !partOfWord(b[i-1]) {
+		if i := keyAt(b, title, d.schema.Preamble.Separator); i > 0 && (!partOfWord(b[i-1]) || len(title) > 3) {
 			d.repairs.Add(d.row.Line, fmt.Sprintf("%q stands in the line of something else, not used", title))
 		}
 	})
 }
 
+// keyAt is where a key with its separator stands in a text, -1 for nowhere.
+// Blanks may stand between them.
+func keyAt(b []byte, title string, separator byte) int {
+	for from := 0; ; {
+		i := bytes.Index(b[from:], []byte(title))
+		if i < 0 {
+			return -1
+		}
+		from += i + len(title)
+		if rest := bytes.TrimLeft(b[from:], " "); len(rest) > 0 && rest[0] == separator {
+			return from - len(title)
+		}
+	}
+}
+
+// splitKey is a known key within which the separator of a statement seems to
+// stand, "" for none.
+func (d *draft) splitKey(s *statement) string {
+	joined, split := strings.ToLower(string(s.key)+string(s.value)), ""
+	d.eachKey(func(title string) {
+		for n := len(title) - 2; n <= len(title)+1 && len(title) > 3; n++ {
+			if len(s.key) < len(title) && n <= len(joined) && changes(joined[:n], strings.ToLower(title)) <= 1+len(title)/8 {
+				split = title
+			}
+		}
+	})
+	return split
+}
+
 // remark tells a line without separator that begins with a known key.
-func (d *draft) remark(b []byte, separator byte) {
+func (d *draft) remark(b []byte, separator byte) (told bool) {
 	d.eachKey(func(title string) {
 		n := len(title)
 		if len(b) > n && match.Equal(b[:n], title) && !partOfWord(b[n]) {
 			d.repairs.Add(d.row.Line, fmt.Sprintf("no %q behind %s, the fact is not used", string(separator), cells.Quoted(b[:n])))
+			told = true
 		}
 	})
+	return told
 }
 
 func partOfWord(c byte) bool {
 	return c-'0' < 10 || (c|0x20)-'a' < 26 || c == '_' || c >= 0x80
+}
+
+// mergedFirst notes a known key in the first line: it has taken the next one in.
+func (r *reader) mergedFirst() {
+	s := &r.schema.Recognise
+	stated := max(len(s.FirstLine), len(s.Begins))
+	text := r.text.Body[r.row.From:r.row.To]
+	if len(text) <= stated {
+		return
+	}
+	mark := r.schema.Dialect.Delimiter
+	if r.schema.Preamble.Lines != schemas.CellLines {
+		mark = r.schema.Preamble.Separator
+	}
+	d := &draft{reader: r}
+	d.eachKey(func(title string) {
+		if keyAt(text[stated:], title, mark) >= 0 {
+			r.merged, r.first = fmt.Sprintf("%q stands in the first line, not used", title), r.row.Line
+		}
+	})
+}
+
+// heldKey is a known key that stands in another one as a word, "" for none.
+func (d *draft) heldKey(key []byte) string {
+	held := ""
+	d.eachKey(func(title string) {
+		i := bytes.Index(key, []byte(title))
+		if i >= 0 && (i == 0 || !partOfWord(key[i-1])) && (i+len(title) == len(key) || !partOfWord(key[i+len(title)]) || key[i+len(title)]-'0' < 10) && len(title) > len(held) {
+			held = title
+		}
+	})
+	return held
 }
 
 // secondFact returns where in a value another comment line with a known key

@@ -91,6 +91,7 @@ func (d *draft) data() {
 func (d *draft) measure() {
 	c := d.columns
 	d.checkNumber()
+	d.checkAgain()
 	if !c.plain {
 		d.special()
 		return
@@ -129,6 +130,7 @@ func (d *draft) special() {
 func (d *draft) keep(volume, value float64) {
 	t := d.table
 	at := len(t.readings)
+	d.checkFall(volume)
 	if d.schema.SameVolume == schemas.SameLast && d.count > 0 && t.readings[d.end-1].VolumeML == volume {
 		at = d.end - 1
 		t.readings[at] = Reading{VolumeML: volume, Value: value, Line: d.row.Line}
@@ -205,7 +207,12 @@ func (d *draft) shape(width int) bool {
 		d.refuseRow(d.row.FaultAt, "", d.row.Fault, "the line is damaged; export the dump again")
 		return false
 	}
+	before := len(d.row.Cells)
 	if d.row.DropEmptyTail(width) {
+		if before-width > d.columns.tail && d.mayBeShifted() {
+			d.refuseRow(d.row.Cells[width-1].From, "", fmt.Sprintf("%s where the header in line %d has %d", plural(before, "cell"), d.columns.line, width+d.columns.tail), "a delimiter is too many, and the last cell may be another one's; export the dump again")
+			return false
+		}
 		d.repairs.Add(d.row.Line, trailingDropped)
 	}
 	n := len(d.row.Cells)
@@ -222,6 +229,17 @@ func (d *draft) shape(width int) bool {
 	}
 	d.refuseRow(at, "", fmt.Sprintf("%s where the header in line %d has %d", plural(n, "cell"), d.columns.line, width), hint)
 	return false
+}
+
+// mayBeShifted reports whether a delimiter too many may have moved the cells of
+// a row into the columns beside their own: the last one may be empty.
+func (d *draft) mayBeShifted() bool {
+	last := len(d.row.Cells) - 1
+	if last != d.columns.width-1 {
+		return false
+	}
+	f := d.columns.fields[last]
+	return f == nil || d.schema.Layout == schemas.Wide || f.Empty != schemas.EmptyRefused || !f.Role.IsReading() && f.Role != schemas.RoleVolume
 }
 
 // checkNumber: a column that counts the rows must count up by one, or a row is

@@ -108,6 +108,10 @@ func (w *wideTable) named() {
 	width := len(w.head.columns.titles)
 	for i := range w.names {
 		row := &w.names[i].row
+		if more := len(row.Cells) - width; more > max(0, w.head.columns.tail) && row.Fault == "" {
+			w.head.refuse(row.Line, row.From, row.To, "", fmt.Sprintf("%s above a header of %d", plural(len(row.Cells), "cell"), width), "a delimiter is too many; export the dump again")
+			return
+		}
 		if row.DropEmptyTail(width) {
 			w.head.repairs.Add(row.Line, trailingDropped)
 		}
@@ -160,7 +164,7 @@ func (w *wideTable) tableRow() {
 		head.blanks = append(head.blanks, row.Line)
 		return
 	case head.unterminated():
-		head.repairs.Add(row.Line, "last row without line end dropped")
+		head.repairs.Add(row.Line, lastDropped)
 		return
 	case head.headerAgain():
 		return
@@ -203,6 +207,9 @@ func (d *wideRun) wideRow() {
 	}
 	switch {
 	case empty && d.ended == 0:
+		d.rows++ // a row lost at the end of the run is not in the count of the rows
+		d.checkNumber()
+		d.rows--
 		d.ended = d.row.Line
 	case empty:
 	case d.ended > 0:

@@ -7,6 +7,7 @@ import (
 	"os"
 	"path/filepath"
 	"slices"
+	"strings"
 	"testing"
 
 	"lastdrop/ingest"
@@ -45,7 +46,7 @@ func numbersAgree(draft, shipped *ingest.Run) bool {
 			return false
 		}
 	}
-	return a.Started == "" || a.Started == b.Started
+	return a.Started == "" || a.Started == b.Started || strings.HasPrefix(b.Started, a.Started+"+") || strings.HasPrefix(b.Started, a.Started+"-") // the zone is not in the dump
 }
 
 func readWithDraft(t *testing.T, data []byte, name string) ([]ingest.Run, Report) {
