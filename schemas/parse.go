@@ -31,7 +31,7 @@ func Parse(path string, src []byte) (*Schema, error) {
 	file := &source{path: path, places: places(src)}
 	root := &node{src: file, table: table}
 	sum := sha256.Sum256(src)
-	s := &Schema{SHA256: hex.EncodeToString(sum[:])}
+	s := &Schema{SHA256: hex.EncodeToString(sum[:]), TOML: string(src)}
 	s.read(root)
 	if len(file.problems) == 0 {
 		s.check(root)

@@ -44,6 +44,7 @@ type Schema struct {
 	Name   string // e.g. "bench-a"
 	Title  string // one line for people
 	SHA256 string // of the TOML bytes, in hex
+	TOML   string // the file as it was written, to be copied
 	Layout Layout
 
 	// ValidFrom is the first day on which the schema is in force, as

@@ -11,11 +11,13 @@ import (
 func (p *program) schemaShowCommand() *command {
 	return &command{
 		name: "schema show", use: "NAME",
-		says:    "say in words what a schema expects of a dump",
-		more:    "Of a schema with several versions every one is shown. Exit: 0 done; 1 DIR cannot be read; 2 usage, also a NAME that is not there.",
-		example: []string{"lastdrop schema show plain", "lastdrop schema show bench-d --schemas /srv/schemas"},
-		options: []option{schemasOption()},
-		action:  p.schemaShow,
+		says:    "say in words what a schema expects, or print its file",
+		more:    "Of a schema with several versions every one is shown. The quickest way to a new one is to copy the one whose dumps look most alike: with --toml its file stands on stdout as it was written. Exit: 0 done; 1 DIR cannot be read; 2 usage, also a NAME that is not there.",
+		example: []string{"lastdrop schema show plain", "lastdrop schema show bench-a --toml > bench-d.toml"},
+		options: []option{schemasOption(),
+			{flag: &cli.BoolFlag{Name: "toml"}, says: "print the file itself, to be copied and changed"},
+		},
+		action: p.schemaShow,
 	}
 }
 
@@ -37,6 +39,12 @@ func (p *program) schemaShow(c *cli.Context) error {
 			if _, err := io.WriteString(p.stdout, "\n"); err != nil {
 				return err
 			}
+		}
+		if c.Bool("toml") {
+			if _, err := io.WriteString(p.stdout, s.TOML); err != nil {
+				return err
+			}
+			continue
 		}
 		if err := schemaview.Show(p.stdout, s, from[s.SHA256]); err != nil {
 			return err
