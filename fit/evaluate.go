@@ -2,6 +2,7 @@ package fit
 
 import (
 	"fmt"
+	"math"
 
 	"lastdrop/fit/spline"
 )
@@ -145,7 +146,7 @@ func (s *inverse) residuals(k *cleaned) []float64 {
 	out := make([]float64, len(k.v))
 	for i := range out {
 		g, _, _ := s.curve.At(k.u[i])
-		out[i] = (g - k.v[i]) * sqrt(w[i]) // above the curve is positive
+		out[i] = (g - k.v[i]) * math.Sqrt(w[i]) // above the curve is positive
 	}
 	return out
 }
@@ -166,7 +167,7 @@ func answers(chosen, other []Estimate) []Endpoint {
 
 func nearest(es []Estimate, v float64) (best Estimate, ok bool) {
 	for _, e := range es {
-		if !ok || abs(e.V-v) < abs(best.V-v) {
+		if !ok || math.Abs(e.V-v) < math.Abs(best.V-v) {
 			best, ok = e, true
 		}
 	}

@@ -268,6 +268,3 @@ func (r *Result) wideInterval(e *Endpoint, n int, limit float64) {
 func sortFlags(f []Flag) {
 	sort.SliceStable(f, func(i, j int) bool { return f[i].Weight > f[j].Weight })
 }
-
-func abs(x float64) float64  { return math.Abs(x) }
-func sqrt(x float64) float64 { return math.Sqrt(x) }
